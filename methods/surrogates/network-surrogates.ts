@@ -1,0 +1,48 @@
+import { z } from 'zod';
+import type { Stream } from '../../harness/random.js';
+import { type Conservatism, defineSurrogate, type Table } from '../parts.js';
+import { modelOfEnsemble, modelOfNetwork } from './network/ensemble.js';
+import { type NetworkSettings, networkSettings, trainNetwork } from './network/training.js';
+
+/** One multilayer perceptron. */
+export const networkSurrogate = defineSurrogate({
+  name: 'network',
+  description: 'one multilayer perceptron, leaky rectified units, trained by squared error',
+  source: 'Rumelhart et al. 1986; Adam: Kingma & Ba 2015',
+  settings: networkSettings,
+  async fit(table, settings, stream) {
+    return modelOfNetwork(await trainNetwork(table, settings, stream));
+  },
+  async fitConservatively(table, settings, conservatism, stream) {
+    return modelOfNetwork(await trainNetwork(table, settings, stream, conservatism));
+  },
+});
+
+/** Several perceptrons that differ in their first parameters and the order of rows. */
+export const networkEnsembleSurrogate = defineSurrogate({
+  name: 'network-ensemble',
+  description: 'several such networks from different random starts; their disagreement is the spread',
+  source: 'Lakshminarayanan et al. 2017',
+  settings: networkSettings.extend({
+    members: z.int().min(2).max(50).default(5).describe('networks in the ensemble'),
+  }),
+  async fit(table, settings, stream) {
+    return modelOfEnsemble(await trainMembers(table, settings, stream));
+  },
+  async fitConservatively(table, settings, conservatism, stream) {
+    return modelOfEnsemble(await trainMembers(table, settings, stream, conservatism));
+  },
+});
+
+async function trainMembers(
+  table: Table,
+  settings: NetworkSettings & { members: number },
+  stream: Stream,
+  conservatism?: Conservatism,
+) {
+  const networks = [];
+  for (let member = 0; member < settings.members; member++) {
+    networks.push(await trainNetwork(table, settings, stream.split('member', member), conservatism));
+  }
+  return networks;
+}

@@ -1,0 +1,41 @@
+import type { Matrix } from '../../../harness/designs.js';
+import type { Encoding } from '../../../harness/encoding.js';
+
+/** Moves every encoded feature to mean 0 and standard deviation 1 over designs drawn uniformly from the space. */
+export interface InputScaling {
+  readonly shifts: Float64Array;
+  readonly factors: Float64Array;
+}
+
+/** The scaling that a space's encoding calls for: it depends on the space alone, never on the table. */
+export function makeScaling(encoding: Encoding): InputScaling {
+  const shifts = new Float64Array(encoding.width);
+  const factors = new Float64Array(encoding.width);
+  for (const { column, offset, width } of encoding.blocks) {
+    const isCategory = column.kind === 'category';
+    shifts.fill(isCategory ? 1 / width : 0.5, offset, offset + width);
+    factors.fill(isCategory ? width / Math.sqrt(width - 1) : Math.sqrt(12), offset, offset + width);
+  }
+  return { shifts, factors };
+}
+
+/** Encoded rows as a network's inputs, (n × width) in 32-bit floats. */
+export function scaleInputs({ shifts, factors }: InputScaling, x: Matrix): Float32Array {
+  const scaled = new Float32Array(x.values.length);
+  for (let i = 0; i < scaled.length; i++) {
+    const j = i % x.columns;
+    scaled[i] = (x.values[i]! - shifts[j]!) * factors[j]!;
+  }
+  return scaled;
+}
+
+/** Gradients by a network's inputs as gradients by encoded features, each times `outputScale`. */
+export function unscaleGradients(
+  { factors }: InputScaling,
+  gradients: Float32Array,
+  outputScale: number,
+): Matrix {
+  const columns = factors.length;
+  const values = Float64Array.from(gradients, (g, i) => g * factors[i % columns]! * outputScale);
+  return { rows: gradients.length / columns, columns, values };
+}
