@@ -32,11 +32,17 @@ export function rowView(matrix: Matrix, i: number): Float64Array {
   return matrix.values.subarray(i * matrix.columns, (i + 1) * matrix.columns);
 }
 
-/** A copy of the named rows, in the order given; a row may be named more than once. */
+/**
+ * A copy of the named rows, in the order given; a row may be named more than once. Throws RangeError for a row that
+ * the matrix doesn't have.
+ */
 export function takeRows(matrix: Matrix, indices: ArrayLike<number>): Matrix {
   const taken = zeros(indices.length, matrix.columns);
   for (let k = 0; k < indices.length; k++) {
-    taken.values.set(rowView(matrix, indices[k]!), k * matrix.columns);
+    const i = indices[k]!;
+    if (!(Number.isInteger(i) && i >= 0 && i < matrix.rows))
+      throw new RangeError(`there is no row ${i} among ${matrix.rows}`);
+    taken.values.set(rowView(matrix, i), k * matrix.columns);
   }
   return taken;
 }

@@ -32,15 +32,17 @@ export function makeEncoding(space: Space): Encoding {
   return { space, blocks, width: offset };
 }
 
-/** Encodes designs, (n, d) to (n, width). */
+/** Encodes designs, (n, d) to (n, width). A value that is not a number makes all features of its column NaN. */
 export function encode(encoding: Encoding, designs: Designs): Matrix {
   const encoded = zeros(designs.rows, encoding.width);
   for (let i = 0; i < designs.rows; i++) {
     const from = rowView(designs, i);
     const to = rowView(encoded, i);
-    encoding.blocks.forEach(({ column, offset }, j) => {
-      if (column.kind === 'category') to[offset + from[j]!] = 1;
-      else to[offset] = (from[j]! - column.low) / (column.high - column.low);
+    encoding.blocks.forEach(({ column, offset, width }, j) => {
+      if (column.kind === 'category') {
+        if (Number.isNaN(from[j]!)) to.fill(Number.NaN, offset, offset + width);
+        else to[offset + from[j]!] = 1;
+      } else to[offset] = (from[j]! - column.low) / (column.high - column.low);
     });
   }
   return encoded;
@@ -48,8 +50,9 @@ export function encode(encoding: Encoding, designs: Designs): Matrix {
 
 /**
  * The designs nearest to encoded rows, (n, width) to (n, d): scaled columns are cut to [0, 1] and whole numbers
- * rounded; a category takes the level with the largest feature (the first of equals). `decode(encode(x))` is x, to
- * the rounding of one multiplication for continuous columns.
+ * rounded; a category takes the level with the largest feature (the first of equals). A feature that is not a number
+ * makes the value of its column NaN. `decode(encode(x))` is x, to the rounding of one multiplication for continuous
+ * columns.
  */
 export function decode(encoding: Encoding, encoded: Matrix): Designs {
   const designs = zeros(encoded.rows, encoding.blocks.length);
@@ -85,18 +88,23 @@ export function projectInPlace(encoding: Encoding, encoded: Matrix): void {
 function decodeBlock({ column, offset, width }: Block, encodedRow: Float64Array): number {
   if (column.kind === 'category') {
     let best = 0;
-    for (let level = 1; level < width; level++) {
-      if (encodedRow[offset + level]! > encodedRow[offset + best]!) best = level;
+    for (let level = 0; level < width; level++) {
+      const feature = encodedRow[offset + level]!;
+      if (Number.isNaN(feature)) return Number.NaN;
+      if (feature > encodedRow[offset + best]!) best = level;
     }
     return best;
   }
   const share = Math.min(1, Math.max(0, encodedRow[offset]!));
   const value = column.low + share * (column.high - column.low);
-  if (column.kind === 'integer') return Math.round(value);
+  if (column.kind === 'integer') return Math.round(value) + 0; // −0 becomes 0
   return Math.min(column.high, Math.max(column.low, value));
 }
 
 function projectOntoSimplex(point: Float64Array): void {
+  // Taking the largest feature off all of them leaves the projection as it is, and huge features exact.
+  const largest = point.reduce((a, b) => Math.max(a, b));
+  for (let k = 0; k < point.length; k++) point[k] = point[k]! - largest;
   const sorted = Float64Array.from(point).sort().reverse();
   let cumulative = 0;
   let threshold = 0;
