@@ -1,0 +1,8 @@
+import type { Comparison } from '../comparison.js';
+
+/** One way to write a comparison as text. */
+export interface TableFormat {
+  /** The file that holds it, in the rehearsal's folder. */
+  readonly file: string;
+  render(comparison: Comparison): string | Promise<string>;
+}

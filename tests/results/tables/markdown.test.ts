@@ -1,0 +1,106 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { compareRows } from '../../../results/comparison.js';
+import { escapeMarkdown, renderMarkdown } from '../../../results/tables/markdown.js';
+import { makeRow } from '../made-ledger.js';
+import { anyRows } from './any-rows.js';
+import { smallComparison } from './small-comparison.js';
+
+/** Pipes of a line that a renderer takes for the edges of cells. */
+function countEdges(line: string): number {
+  return line.replaceAll(/\\./g, '').split('|').length - 1;
+}
+
+describe('renderMarkdown(comparison)', () => {
+  it('writes a heading and a pipe table for each task and for all, what stands out, and how to read it', () => {
+    expect(renderMarkdown(smallComparison)).toMatchInlineSnapshot(`
+      "# Comparison
+
+      True scores, normalized: 0 is the worst design of the pool, 1 the top; scores outside are possible and never clipped. Brackets hold 95 % intervals. Methods above the row "best visible" found, on average, better designs than the table held.
+
+      ## hartmann-6
+
+      curtain ceiling=0.5 · 3 seeds · batch of 128 · 200 visible rows · 1 = published optimum
+
+      | method | best | median | lift | optimism | failed | distinct | seconds |
+      | :--- | ---: | ---: | ---: | ---: | ---: | ---: | ---: |
+      | careful | 0.800 \\[0.552, 1.048\\] | 0.600 \\[0.352, 0.848\\] | +0.190 \\[-0.034, +0.414\\] | – | 0/3 | 128 | 2.0 |
+      | **best visible** (line to beat) | 0.610 \\[0.585, 0.635\\] | – | – | – | – | – | – |
+      | naive | 0.400 \\[0.152, 0.648\\] | 0.200 \\[-0.048, 0.448\\] | -0.210 \\[-0.472, +0.052\\] | +0.550 \\[-0.085, +1.185\\] | 1/3 | 128 | 2.0 |
+
+      ## nk(20, 3)
+
+      curtain ceiling=0.5 · 3 seeds · batch of 128 · 200 visible rows · 1 = best known score
+
+      | method | best | median | lift | optimism | failed | distinct | seconds |
+      | :--- | ---: | ---: | ---: | ---: | ---: | ---: | ---: |
+      | careful | 0.900 \\[0.652, 1.148\\] | 0.600 \\[0.352, 0.848\\] | +0.290 \\[+0.066, +0.514\\] | – | 0/3 | 128 | 2.0 |
+      | **best visible** (line to beat) | 0.610 \\[0.585, 0.635\\] | – | – | – | – | – | – |
+      | naive | 0.500 \\[0.252, 0.748\\] | 0.200 \\[-0.048, 0.448\\] | -0.110 \\[-0.372, +0.152\\] | +0.600 \\[+0.352, +0.848\\] | 0/3 | 128 | 2.0 |
+
+      ## All tasks
+
+      2 tasks · mean of the tasks' means · IQM: interquartile mean over all cells
+
+      | method | best | IQM of best | median | IQM of median | lift | optimism | failed | distinct | seconds |
+      | :--- | ---: | ---: | ---: | ---: | ---: | ---: | ---: | ---: | ---: |
+      | careful | 0.850 \\[0.783, 0.917\\] | 0.850 \\[0.783, 0.933\\] | 0.600 \\[0.533, 0.667\\] | 0.600 \\[0.517, 0.683\\] | +0.240 \\[+0.180, +0.300\\] | – | 0/6 | 128 | 2.0 |
+      | **best visible** (line to beat) | 0.610 \\[0.603, 0.617\\] | 0.610 \\[0.602, 0.618\\] | – | – | – | – | – | – | – |
+      | naive | 0.450 \\[0.383, 0.517\\] | 0.450 \\[0.383, 0.517\\] | 0.200 \\[0.133, 0.267\\] | 0.200 \\[0.117, 0.283\\] | -0.160 \\[-0.230, -0.090\\] | +0.575 \\[+0.517, +0.633\\] | 1/6 | 128 | 2.0 |
+
+      ## Better than best visible
+
+      - interval of the lift above 0 on nk(20, 3): careful +0.29 \\[+0.07, +0.51\\].
+      - interval of the lift above 0 on the mean of all tasks: careful +0.24 \\[+0.18, +0.30\\].
+
+      ## Fooled by its own model
+
+      - naive believed its batch 0.60 \\[0.35, 0.85\\] above the truth on nk(20, 3), and its best design fell 0.11 short of the best visible one on average.
+
+      ## Failed
+
+      - naive failed 1 of 3 cells on hartmann-6: out of time after 20 s.
+
+      ## How to read this
+
+      - best: highest true score of the batch (100th percentile), mean over seeds.
+      - median: median true score of the batch (50th percentile), mean over seeds.
+      - IQM: interquartile mean of best over the cells of all tasks.
+      - lift: best minus best visible: what the batch gained over the table.
+      - optimism: believed minus true score, mean over the batch; – if no belief was stated.
+      - failed: cells that failed, of how many; a cell is one method on one task with one seed.
+      - distinct: different designs in a batch, mean over the cells that did not fail.
+      - seconds: wall-clock time of one cell, mean.
+      - Seeds for each task: 3.
+      - 95 % intervals of means over fewer than 8 seeds: Student's t, which supposes normal scores.
+      - 95 % intervals over all tasks: percentile bootstrap over the seeds within each task, 2,000 resamples (Agarwal et al. 2021); too short with fewer than 8 seeds a task.
+      - Each interval is of one method: they are not paired tests between methods, and are not corrected for the number of methods.
+      - A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.
+      - Made by onebatch 0.1.0.
+      "
+    `);
+  });
+
+  it('has rows with as many cells as their header, whatever the labels', () => {
+    fc.assert(
+      fc.property(anyRows, (rows) => {
+        const text = renderMarkdown(compareRows(rows, { version: '0.1.0', resamples: 10 }));
+        const blocks = text.split('\n\n').filter((block) => block.startsWith('| method |'));
+        expect(blocks.length).toBeGreaterThan(0);
+        for (const block of blocks) expect(new Set(block.trimEnd().split('\n').map(countEdges)).size).toBe(1);
+      }),
+      { numRuns: 60 },
+    );
+  });
+
+  it('shows a label with pipes as it is written', () => {
+    const text = renderMarkdown(compareRows([makeRow({ method: 'a|b_c', seed: 0 })], { version: '0.1.0' }));
+    expect(text).toContain('| a\\|b\\_c |');
+  });
+});
+
+describe('escapeMarkdown(text)', () => {
+  it('makes markup literal and line breaks spaces', () => {
+    expect(escapeMarkdown('*a* <b>\n`c` [d](e)')).toBe('\\*a\\* \\<b\\> \\`c\\` \\[d\\](e)');
+  });
+});
