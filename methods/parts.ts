@@ -35,6 +35,8 @@ export interface Model {
 
 /** How hard, and against what, a conservative training pushes predictions down. */
 export interface Conservatism {
+  /** Rows of each training step from which designs are mined. */
+  readonly rows: number;
   /** Ascent steps that mine the designs pushed down. */
   readonly steps: number;
   /** Size of one such step, as for the search `gradient-ascent`. */

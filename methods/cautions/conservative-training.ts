@@ -10,8 +10,9 @@ export const conservativeTraining = defineCaution({
   source: 'conservative objective models, ICML 2021',
   settings: z.strictObject({
     adjust: z.boolean().default(true).describe('adjust the weight to hold over-estimation at the target'),
-    weight: z.number().min(0).default(0.5).describe('weight of the penalty; where adjusted, its start'),
-    target: z.number().default(0.5).describe('over-estimation to hold, in standard deviations of the scores'),
+    weight: z.number().min(0).default(0.1).describe('weight of the penalty; where adjusted, its start'),
+    target: z.number().default(2).describe('over-estimation to hold, in standard deviations of the scores'),
+    rows: z.int().min(1).default(32).describe('rows of a training step from which designs are mined'),
     steps: z.int().min(1).default(20).describe('ascent steps that mine the designs held down'),
     stepSize: z.number().positive().default(0.01).describe('size of one such step'),
   }),
@@ -22,8 +23,8 @@ export const conservativeTraining = defineCaution({
         `caution "conservative-training" trains networks only; surrogate "${surrogate.name}" can't be trained so`,
       );
     }
-    const { adjust, target, weight, steps, stepSize } = settings;
-    const conservatism: Conservatism = { steps, stepSize, weight, ...(adjust ? { target } : {}) };
+    const { adjust, target, ...fixed } = settings;
+    const conservatism: Conservatism = { ...fixed, ...(adjust ? { target } : {}) };
     return meanObjective(await surrogate.fitConservatively(table, surrogateSettings, conservatism, stream));
   },
 });

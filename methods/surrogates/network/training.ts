@@ -25,7 +25,7 @@ export const networkSettings = z.strictObject({
 export type NetworkSettings = z.output<typeof networkSettings>;
 
 /** How the weight of a conservative penalty reacts to over-estimation, a step. */
-const weightRate = 0.05;
+const weightRate = 0.01;
 
 /**
  * Trains one network on the table: squared error on standardized scores, Adam, rows in seeded random order.
@@ -100,9 +100,10 @@ class ConservativePenalty {
     this.#weight = conservatism.weight;
   }
 
-  /** Where an ascent of the present network takes the rows. */
+  /** Where an ascent of the present network takes the first of the step's rows. */
   mine(device: DeviceNetwork, x: Matrix): Matrix {
-    const mined = { ...x, values: x.values.slice() };
+    const rows = Math.min(x.rows, this.#conservatism.rows);
+    const mined = { rows, columns: x.columns, values: x.values.slice(0, rows * x.columns) };
     for (let step = 0; step < this.#conservatism.steps; step++) {
       const { gradients } = device.inputGradients(scaleInputs(this.#inputs, mined), mined.rows);
       const gradient = unscaleGradients(this.#inputs, gradients, 1);

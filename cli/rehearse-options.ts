@@ -1,0 +1,59 @@
+import { readFile } from 'node:fs/promises';
+import { availableParallelism } from 'node:os';
+import { join } from 'node:path';
+import type { Catalogue } from '../harness/catalogue.js';
+import { OnebatchError } from '../harness/errors.js';
+import type { Plan } from '../harness/plan/plan.js';
+import { readPlan } from '../harness/plan/read.js';
+import { packageRoot } from './package-root.js';
+
+/** What a person may type after `onebatch rehearse`. */
+export interface RehearseArguments {
+  readonly plan?: string | undefined;
+  readonly out?: string | undefined;
+  readonly workers?: number | undefined;
+  readonly seeds?: number | undefined;
+}
+
+/** The plan that is run when none is named. */
+export const demoPlan: string = join(packageRoot, 'cli', 'demo.plan.yaml');
+
+/**
+ * Reads the plan and puts the command line's words over it.
+ *
+ * @throws OnebatchError (`bad-input`, `bad-plan`) with one clear line for each problem.
+ */
+export async function readRehearsal(
+  given: RehearseArguments,
+  catalogue: Catalogue,
+): Promise<{ plan: Plan; out: string; workers: number }> {
+  const file = given.plan ?? demoPlan;
+  const plan = readPlan(await readText(file), file, catalogue);
+  const seeds = wholeNumber('--seeds', given.seeds) ?? plan.seeds;
+  return {
+    plan: { ...plan, seeds },
+    out: given.out ?? join('out', plan.name),
+    workers: wholeNumber('--workers', given.workers) ?? availableParallelism(),
+  };
+}
+
+async function readText(file: string): Promise<string> {
+  try {
+    return await readFile(file, 'utf8');
+  } catch (cause) {
+    const { code } = cause as NodeJS.ErrnoException;
+    const why = reasons[code ?? ''] ?? `can't be read (${code})`;
+    throw new OnebatchError('bad-input', `${file}: ${why}`, { cause });
+  }
+}
+
+const reasons: Readonly<Record<string, string>> = {
+  ENOENT: 'there is no such plan file; check the path, or leave it out to run the demo',
+  EACCES: 'you may not read this file; check its permissions',
+  EISDIR: 'is a folder; name a plan file',
+};
+
+function wholeNumber(option: string, value: number | undefined): number | undefined {
+  if (value === undefined || (Number.isInteger(value) && value >= 1 && value <= 100_000)) return value;
+  throw new OnebatchError('bad-input', `${option}: is ${value}, must be a whole number from 1 to 100000`);
+}
