@@ -26,7 +26,7 @@ export interface NkLandscape {
 }
 
 /**
- * The task of a landscape: fitness is the mean of the N contributions (Kauffman & Weinberger 1989, equation 1), larger
+ * The task of a landscape: fitness is the mean of the N contributions (Kauffman & Weinberger 1989), larger
  * is better. The optimum is `exact` where it can be computed by elimination (`maximizeFactors`) within its work limit,
  * which is always so for up to 4 letters and 4 adjacent interactions at 15 sites; else it is `best-known`, from an
  * iterated local search with `stream`.
@@ -52,7 +52,7 @@ export function nkTask({ neighbours, tables, letters }: NkLandscape, stream: Str
   };
 }
 
-/** Kauffman's NK landscapes over sequences, with fresh tables (and random neighbours) for every seed. */
+/** NK landscapes over sequences, with fresh tables (and random neighbours) for every seed. */
 export const nk = defineTaskFamily({
   name: 'nk',
   description: 'NK landscape over a sequence: each site contributes by its own letter and K others',

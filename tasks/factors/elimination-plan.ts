@@ -7,7 +7,7 @@ export interface EliminationStep {
 
 /**
  * Chooses the order in which sites are maximized away: always the one with the fewest others, the lowest-numbered of
- * equals (the minimum-degree rule; Bertelè & Brioschi 1972, chapter 2).
+ * equals (the minimum-degree rule; Bertelè & Brioschi 1972).
  *
  * `scopes` names the sites of each factor. Returns `undefined` when the order needs more than `workLimit` table
  * look-ups in total, where a step needs (tables that hold its site) · alphabet^(1 + others).

@@ -48,7 +48,7 @@ describe('planElimination(sites, alphabet, scopes, workLimit)', () => {
   const widest = (scopes: number[][], sites: number) =>
     Math.max(...planElimination(sites, 2, scopes, 1e9)!.map((step) => step.others.length));
 
-  // Widths of these graphs (treewidth): Bertelè & Brioschi 1972; a path has 1, a cycle 2, a complete graph n − 1.
+  // Elementary treewidths: a path has 1, a cycle 2, a complete graph of n sites n − 1.
   test('holds one other site at a time on a chain, two on a ring, all others on a complete graph', () => {
     const sites = Array.from({ length: 9 }, (_, i) => i);
     const chain = sites.slice(1).map((i) => [i - 1, i]);
