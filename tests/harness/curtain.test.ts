@@ -1,9 +1,9 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
-import { type CurtainSpec, drawCurtain } from '../../harness/curtain.js';
+import { type CurtainSpec, curtainSchema, drawCurtain } from '../../harness/curtain.js';
 import { copyMatrix, type Designs, rowView, takeRows } from '../../harness/designs.js';
 import { quantile } from '../../harness/quantile.js';
-import { rootStream } from '../../harness/random.js';
+import { rootStream, type Stream } from '../../harness/random.js';
 import { makeSpace, sequenceSpace } from '../../harness/space.js';
 import type { Task } from '../../harness/task.js';
 import { arbitrarySpace, runs } from './arbitrary-space.js';
@@ -127,6 +127,29 @@ describe('any curtain', () => {
       }),
       runs,
     );
+  });
+
+  test('draws each part from a child stream of its own, and nothing from the stream it is given', () => {
+    const task = toyTask(sequenceSpace(6, ['A', 'B', 'C']), rootStream(1));
+    const root = rootStream(2);
+    const asked: string[] = [];
+    const forbidden = () => {
+      throw new Error('drew from the parent');
+    };
+    const watched: Stream = {
+      path: root.path,
+      uniform: forbidden,
+      below: forbidden,
+      normal: forbidden,
+      split: (...keys) => {
+        asked.push(keys.join(' '));
+        return root.split(...keys);
+      },
+    };
+    const spec = curtainSchema.parse({ ceiling: 0.9, region: {}, family: {}, thin: 5, noise: 1 });
+    const everything = drawCurtain(task, spec, 100, watched);
+    expect(asked.sort()).toEqual(['family', 'noise', 'pool', 'region', 'thin']);
+    expect(everything).toEqual(drawCurtain(task, spec, 100, root));
   });
 
   test('leaves spec and optimum as they were', () => {
