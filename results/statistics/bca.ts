@@ -38,7 +38,7 @@ export interface BcaInterval {
 }
 
 /**
- * BCa interval of any statistic of n observations (Efron 1987; DiCiccio & Efron 1996, section 2).
+ * BCa interval of any statistic of n observations (Efron 1987; DiCiccio & Efron 1996).
  *
  * The statistic is called with the row numbers of a resample, n of them, some repeated; for the jackknife with n − 1.
  * Costs `resamples` + n + 1 calls.

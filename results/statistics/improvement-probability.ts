@@ -16,7 +16,7 @@ export interface ImprovementProbability {
 }
 
 /**
- * Probability of improvement (Agarwal et al. 2021, section 4.3): in each task the share of pairs of runs in which the
+ * Probability of improvement (Agarwal et al. 2021): in each task the share of pairs of runs in which the
  * candidate scores higher, ties counting half (Mann & Whitney 1947), averaged over tasks; with a percentile interval
  * from runs redrawn within tasks. It tells how often, and not by how much.
  *

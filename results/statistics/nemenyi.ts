@@ -36,7 +36,7 @@ export function nemenyiDifference(options: {
 
 /**
  * The largest groups of methods that can't be told apart: all members' mean ranks lie within less than the critical
- * difference of each other. These are the bars of a critical-difference diagram (Demšar 2006, figure 1).
+ * difference of each other. These are the bars of a critical-difference diagram (Demšar 2006).
  *
  * @param meanRanks (methods).
  * @returns groups of two and more positions in `meanRanks`, each from the best rank on; groups may overlap.

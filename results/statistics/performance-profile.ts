@@ -21,7 +21,7 @@ export interface PerformanceProfile {
 }
 
 /**
- * Performance profile, or score distribution (Agarwal et al. 2021, section 4.2): for each threshold the share of runs
+ * Performance profile, or score distribution (Agarwal et al. 2021): for each threshold the share of runs
  * that score strictly above it, every task weighing the same, with pointwise percentile bands from runs redrawn
  * within tasks.
  *

@@ -27,7 +27,7 @@ export interface PairsNeeded {
 
 /**
  * Power of the two-sided paired t test with n pairs, from the noncentral t distribution: the chance that it finds a
- * true mean difference (Cohen 1988, chapter 2). Exact for normal differences.
+ * true mean difference (Cohen 1988). Exact for normal differences.
  *
  * @throws RangeError for fewer than 2 pairs, or a deviation or alpha out of range.
  */

@@ -32,7 +32,7 @@ export interface StratifiedInterval {
 
 /**
  * Percentile interval of an aggregate over tasks: runs are redrawn with replacement within each task, and tasks stay
- * as they are (Agarwal et al. 2021, section 4.1). It tells how other seeds on the same tasks would have come out, and
+ * as they are (Agarwal et al. 2021). It tells how other seeds on the same tasks would have come out, and
  * nothing of other tasks. With one run in every task it has no width.
  *
  * @param tasks one array of scores a task, one score a seed; tasks may differ in their number of runs.
