@@ -24,7 +24,12 @@ class ProgressBar implements Progress {
   constructor(total: number, done: number) {
     this.#pace = new Pace(total, done);
     this.#bar = new SingleBar(
-      { format: '  {bar} {value}/{total} cells, {failed} failed, {left} left', clearOnComplete: true, barsize: 30, hideCursor: true },
+      {
+        format: '  {bar} {value}/{total} cells, {failed} failed, {left} left',
+        clearOnComplete: true,
+        barsize: 30,
+        hideCursor: true,
+      },
       Presets.shades_classic,
     );
     this.#bar.start(total, done, { failed: 0, left: '?' });

@@ -68,7 +68,9 @@ async function runCells(plan: Plan, out: string, ledger: Ledger, workers: number
   }
   const before = finished.size === 0 ? '' : `, ${finished.size} of them done before`;
   const crewSize = Math.min(workers, total - finished.size);
-  remark(`Rehearsing "${plan.name}": ${total} cells${before}, on ${crewSize} worker${crewSize === 1 ? '' : 's'}, into ${out}`);
+  remark(
+    `Rehearsing "${plan.name}": ${total} cells${before}, on ${crewSize} worker${crewSize === 1 ? '' : 's'}, into ${out}`,
+  );
   const crew = openCrew(workerFile, crewSize);
   const interruption = listenForInterruption(() => void crew.close());
   const progress = startProgress(total, finished.size);
@@ -92,7 +94,9 @@ async function runCells(plan: Plan, out: string, ledger: Ledger, workers: number
     await crew.close();
   }
   if (interruption.signal.aborted) {
-    remark(`Interrupted: ${ledger.rows.length} of ${total} cells are in ${out}; the same command goes on from there.`);
+    remark(
+      `Interrupted: ${ledger.rows.length} of ${total} cells are in ${out}; the same command goes on from there.`,
+    );
     return false;
   }
   remark(`Done in ${describeSeconds((performance.now() - start) / 1000)}.`);

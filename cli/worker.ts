@@ -1,4 +1,4 @@
-import { type MethodReference, lookUpMethod } from '../harness/catalogue.js';
+import { lookUpMethod, type MethodReference } from '../harness/catalogue.js';
 import { firstLine, type WorkerTask } from '../harness/crew.js';
 import type { MethodAnswer, MethodJob } from '../harness/job.js';
 import type { Method, Offer } from '../harness/method.js';

@@ -14,6 +14,7 @@ export async function writeComparison(folder: string, plan: Plan, ledger: Ledger
     seed: plan.seed,
     order: { tasks: plan.tasks.map(({ label }) => label), methods: plan.methods.map(({ label }) => label) },
   });
-  for (const { file, render } of tableFormats) await replaceFile(join(folder, file), await render(comparison));
+  for (const { file, render } of tableFormats)
+    await replaceFile(join(folder, file), await render(comparison));
   return renderTerminal(comparison, { style: process.stdout.isTTY === true && !process.env['NO_COLOR'] });
 }

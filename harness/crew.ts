@@ -3,7 +3,9 @@ import { Tinypool } from 'tinypool';
 import type { MethodAnswer, MethodJob } from './job.js';
 
 /** A job's end as the crew saw it. */
-export type CrewResult = MethodAnswer | { readonly kind: 'lost'; readonly reason: string; readonly seconds: number };
+export type CrewResult =
+  | MethodAnswer
+  | { readonly kind: 'lost'; readonly reason: string; readonly seconds: number };
 
 /** Worker threads that run methods; a method that outruns its budget is ended without harm to the others. */
 export interface Crew {
@@ -48,8 +50,13 @@ export function openCrew(workerFile: URL, workers: number): Crew {
         return (await pool.run(task, options)) as MethodAnswer;
       } catch (error) {
         if (closing) return { kind: 'lost', reason: 'interrupted', seconds: 0 };
-        if (!limit.signal.aborted) return { kind: 'lost', reason: `its worker ended: ${firstLine(error)}`, seconds: 0 };
-        return { kind: 'lost', reason: `took longer than its budget of ${budgetSeconds} s`, seconds: budgetSeconds };
+        if (!limit.signal.aborted)
+          return { kind: 'lost', reason: `its worker ended: ${firstLine(error)}`, seconds: 0 };
+        return {
+          kind: 'lost',
+          reason: `took longer than its budget of ${budgetSeconds} s`,
+          seconds: budgetSeconds,
+        };
       } finally {
         limit.clear();
       }

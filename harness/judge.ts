@@ -84,7 +84,10 @@ export function judgeFailure(cell: Cell, stage: Stage, reason: string, batchSize
   };
 }
 
-function judgeStep({ step, believed, designs }: NonNullable<Proposal['trace']>[number], stage: Stage): JudgedStep {
+function judgeStep(
+  { step, believed, designs }: NonNullable<Proposal['trace']>[number],
+  stage: Stage,
+): JudgedStep {
   return { step, believed: believed.map(stage.normalize), truth: stage.judge(designs) };
 }
 

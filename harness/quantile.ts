@@ -1,4 +1,4 @@
-import { quantileSorted } from 'simple-statistics';
+import { quantileSorted as interpolate } from 'simple-statistics';
 
 /**
  * The p-quantile of a sample by type 7 of Hyndman & Fan 1996 (The American Statistician 50): linear interpolation
@@ -9,9 +9,13 @@ import { quantileSorted } from 'simple-statistics';
  * @throws RangeError when there are no values or p lies outside [0, 1].
  */
 export function quantile(values: ArrayLike<number>, p: number): number {
-  if (values.length === 0) throw new RangeError('a quantile needs at least one value');
+  return quantileSorted(Float64Array.from(values).sort(), p);
+}
+
+/** As `quantile`, for values already in ascending order, NaN last, which is not checked. */
+export function quantileSorted(sorted: ArrayLike<number>, p: number): number {
+  if (sorted.length === 0) throw new RangeError('a quantile needs at least one value');
   if (!(p >= 0 && p <= 1)) throw new RangeError(`a quantile needs p from 0 to 1, got ${p}`);
-  const sorted = Float64Array.from(values).sort();
   if (Number.isNaN(sorted[sorted.length - 1]!)) return Number.NaN;
-  return quantileSorted(sorted as unknown as number[], p);
+  return interpolate(sorted as number[], p);
 }

