@@ -73,7 +73,7 @@ export function snap(encoding: Encoding, encoded: Matrix): Matrix {
 
 /**
  * Moves encoded rows, in place, to the nearest point of the relaxed space: scaled columns into [0, 1], the features
- * of a category onto the probability simplex (Duchi et al. 2008, figure 1).
+ * of a category onto the probability simplex (Michelot 1986).
  */
 export function projectInPlace(encoding: Encoding, encoded: Matrix): void {
   for (let i = 0; i < encoded.rows; i++) {
@@ -103,15 +103,23 @@ function decodeBlock({ column, offset, width }: Block, encodedRow: Float64Array)
 
 function projectOntoSimplex(point: Float64Array): void {
   // Taking the largest feature off all of them leaves the projection as it is, and huge features exact.
-  const largest = point.reduce((a, b) => Math.max(a, b));
+  let largest = Number.NEGATIVE_INFINITY;
+  for (let k = 0; k < point.length; k++) largest = Math.max(largest, point[k]!);
   for (let k = 0; k < point.length; k++) point[k] = point[k]! - largest;
-  const sorted = Float64Array.from(point).sort().reverse();
-  let cumulative = 0;
-  let threshold = 0;
-  for (let k = 0; k < sorted.length; k++) {
-    cumulative += sorted[k]!;
-    const candidate = (cumulative - 1) / (k + 1);
-    if (sorted[k]! - candidate > 0) threshold = candidate;
+  let threshold = Number.NEGATIVE_INFINITY;
+  let active = Number.POSITIVE_INFINITY;
+  for (;;) {
+    let sum = 0;
+    let above = 0;
+    for (let k = 0; k < point.length; k++) {
+      if (point[k]! > threshold) {
+        sum += point[k]!;
+        above += 1;
+      }
+    }
+    if (above >= active || above === 0) break; // exactly equal, but for rounding
+    active = above;
+    threshold = (sum - 1) / above;
   }
   for (let k = 0; k < point.length; k++) point[k] = Math.max(0, point[k]! - threshold);
 }

@@ -11,7 +11,7 @@ import { bestVisible, scoreScale } from '../table.js';
 export const gradientAscent = defineSearch({
   name: 'gradient-ascent',
   description: 'projected gradient ascent from the best visible designs; categories climb a relaxed one-hot',
-  source: 'gradient ascent: common practice; projection: Duchi et al. 2008',
+  source: 'gradient ascent: common practice; projection: Michelot 1986',
   settings: z.strictObject({
     steps: z.int().min(0).default(50).describe('ascent steps'),
     stepSize: z.number().positive().default(0.01).describe('size of a step in unit-cube units'),

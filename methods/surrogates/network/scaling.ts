@@ -1,4 +1,4 @@
-import type { Matrix } from '../../../harness/designs.js';
+import { type Matrix, zeros } from '../../../harness/designs.js';
 import type { Encoding } from '../../../harness/encoding.js';
 
 /** Moves every encoded feature to mean 0 and standard deviation 1 over designs drawn uniformly from the space. */
@@ -20,11 +20,13 @@ export function makeScaling(encoding: Encoding): InputScaling {
 }
 
 /** Encoded rows as a network's inputs, (n × width) in 32-bit floats. */
-export function scaleInputs({ shifts, factors }: InputScaling, x: Matrix): Float32Array {
-  const scaled = new Float32Array(x.values.length);
-  for (let i = 0; i < scaled.length; i++) {
-    const j = i % x.columns;
-    scaled[i] = (x.values[i]! - shifts[j]!) * factors[j]!;
+export function scaleInputs(
+  { shifts, factors }: InputScaling,
+  { rows, columns, values }: Matrix,
+): Float32Array {
+  const scaled = new Float32Array(values.length);
+  for (let i = 0, k = 0; i < rows; i++) {
+    for (let j = 0; j < columns; j++, k++) scaled[k] = (values[k]! - shifts[j]!) * factors[j]!;
   }
   return scaled;
 }
@@ -35,7 +37,11 @@ export function unscaleGradients(
   gradients: Float32Array,
   outputScale: number,
 ): Matrix {
-  const columns = factors.length;
-  const values = Float64Array.from(gradients, (g, i) => g * factors[i % columns]! * outputScale);
-  return { rows: gradients.length / columns, columns, values };
+  const unscaled = zeros(gradients.length / factors.length, factors.length);
+  for (let i = 0, k = 0; i < unscaled.rows; i++) {
+    for (let j = 0; j < unscaled.columns; j++, k++) {
+      unscaled.values[k] = gradients[k]! * factors[j]! * outputScale;
+    }
+  }
+  return unscaled;
 }

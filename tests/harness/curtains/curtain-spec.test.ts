@@ -12,7 +12,7 @@ describe('curtainSchema', () => {
 
   test('describes every part', () => {
     for (const [key, schema] of Object.entries(curtainSchema.shape)) {
-      expect(schema.description, key).toMatch(/^[A-Z].*\.$/);
+      expect(schema.description, key).toMatch(/^[a-z].*[^.]$/);
     }
   });
 
