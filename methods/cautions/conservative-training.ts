@@ -12,9 +12,9 @@ export const conservativeTraining = defineCaution({
     adjust: z.boolean().default(true).describe('adjust the weight to hold over-estimation at the target'),
     weight: z.number().min(0).default(0.1).describe('weight of the penalty; where adjusted, its start'),
     target: z.number().default(2).describe('over-estimation to hold, in standard deviations of the scores'),
-    rows: z.int().min(1).default(32).describe('rows of a training step from which designs are mined'),
+    rows: z.int().min(1).default(16).describe('rows of a training step from which designs are mined'),
     steps: z.int().min(1).default(20).describe('ascent steps that mine the designs held down'),
-    stepSize: z.number().positive().default(0.01).describe('size of one such step'),
+    stepSize: z.number().positive().default(0.03).describe('size of one such step'),
   }),
   async prepare(surrogate, surrogateSettings, table, settings, stream) {
     if (surrogate.fitConservatively === undefined) {

@@ -14,7 +14,7 @@ export const gradientAscent = defineSearch({
   source: 'gradient ascent: common practice; projection: Michelot 1986',
   settings: z.strictObject({
     steps: z.int().min(0).default(50).describe('ascent steps'),
-    stepSize: z.number().positive().default(0.01).describe('size of a step in unit-cube units'),
+    stepSize: z.number().positive().default(0.03).describe('size of a step in unit-cube units'),
     traceEvery: z.int().min(1).default(5).describe('steps between two records of the climb'),
   }),
   climb(objective, table, batchSize, { steps, stepSize, traceEvery }) {
