@@ -2,6 +2,7 @@ import { z } from 'zod';
 import type { ListedPart } from '../harness/catalogue.js';
 import { catalogue } from './catalogue.js';
 import { type ExitCode, exitCodes } from './exit-codes.js';
+import { type SectionName, sectionNames } from './section-names.js';
 import { say } from './terminal.js';
 
 const sections = {
@@ -10,20 +11,16 @@ const sections = {
   surrogates: { title: 'Surrogates, for methods of your own', parts: catalogue.surrogates },
   searches: { title: 'Searches, for methods of your own', parts: catalogue.searches },
   cautions: { title: 'Cautions, for methods of your own', parts: catalogue.cautions },
-} as const;
-
-export type Section = keyof typeof sections;
-
-export const sectionNames = Object.keys(sections) as Section[];
+} as const satisfies Record<SectionName, unknown>;
 
 /** Shows what plans can name: each task, method and part with its source, its settings and their defaults. */
-export function list(only: Section | undefined): ExitCode {
+export function list(only: SectionName | undefined): ExitCode {
   const chosen = only === undefined ? sectionNames : [only];
   say(chosen.map((name) => describeSection(name)).join('\n'));
   return exitCodes.done;
 }
 
-function describeSection(name: Section): string {
+function describeSection(name: SectionName): string {
   const { title, parts } = sections[name];
   return [title, '', ...parts.flatMap(describePart)].join('\n');
 }

@@ -3,9 +3,8 @@ import yargs from 'yargs';
 import { hideBin } from 'yargs/helpers';
 import { OnebatchError } from '../harness/errors.js';
 import { exitCodes } from './exit-codes.js';
-import { list, sectionNames } from './list.js';
 import { version } from './package-root.js';
-import { rehearse } from './rehearse.js';
+import { sectionNames } from './section-names.js';
 import { remark } from './terminal.js';
 
 const program = yargs(hideBin(process.argv))
@@ -22,6 +21,7 @@ const program = yargs(hideBin(process.argv))
         .option('workers', { type: 'number', requiresArg: true, describe: 'worker threads [default: cores]' })
         .option('seeds', { type: 'number', requiresArg: true, describe: "repeats, instead of the plan's" }),
     async (given) => {
+      const { rehearse } = await import('./rehearse.js');
       process.exitCode = await rehearse(given);
     },
   )
@@ -29,7 +29,8 @@ const program = yargs(hideBin(process.argv))
     'list [section]',
     'show tasks and methods with their settings and sources',
     (command) => command.positional('section', { choices: sectionNames, describe: 'show this section only' }),
-    ({ section }) => {
+    async ({ section }) => {
+      const { list } = await import('./list.js');
       process.exitCode = list(section);
     },
   )
