@@ -1,7 +1,7 @@
 import * as tf from '@tensorflow/tfjs-core';
 import type { Parameters } from './parameters.js';
 
-/** Slope of the hidden units below zero. */
+/** Slope of the hidden units below zero where nothing else is asked for. */
 export const leak = 0.3;
 
 /** A network's parameters as tensors; `dispose` frees them. */
@@ -10,8 +10,11 @@ export class DeviceNetwork {
   readonly #biases: readonly tf.Tensor1D[];
   /** The wasm backend multiplies far faster with explicitly transposed operands than with transpose flags. */
   readonly #transposed: (tf.Tensor2D | undefined)[] = [];
+  readonly #slope: number;
 
-  constructor(parameters: Parameters) {
+  /** @param slope slope of the hidden units below zero; 0 makes them plain rectified units. */
+  constructor(parameters: Parameters, slope = leak) {
+    this.#slope = slope;
     this.#weights = parameters.map((layer) => tf.tensor2d(layer.weights, [layer.inputs, layer.outputs]));
     this.#biases = parameters.map((layer) => tf.tensor1d(layer.biases));
   }
@@ -36,7 +39,7 @@ export class DeviceNetwork {
     for (let layer = this.#weights.length - 1; layer >= 0; layer--) {
       const back = this.#throughWeights(delta, layer);
       delta.dispose();
-      delta = layer === 0 ? back : throughActivation(back, activations[layer]!);
+      delta = layer === 0 ? back : throughActivation(back, activations[layer]!, this.#slope);
     }
     const gradients = delta.dataSync<'float32'>();
     tf.dispose([activations, delta]);
@@ -63,7 +66,9 @@ export class DeviceNetwork {
       gradients.unshift(weights.dataSync<'float32'>(), biases.dataSync<'float32'>());
       tf.dispose([transposed, weights, biases]);
       const before = delta;
-      if (layer > 0) delta = throughActivation(this.#throughWeights(before, layer), activations[layer]!);
+      if (layer > 0) {
+        delta = throughActivation(this.#throughWeights(before, layer), activations[layer]!, this.#slope);
+      }
       before.dispose();
     }
     tf.dispose(activations);
@@ -78,7 +83,7 @@ export class DeviceNetwork {
       const bias = this.#biases[layer]!;
       const hidden = layer < this.#weights.length - 1;
       const next = hidden
-        ? tf.fused.matMul({ a, b: weights, bias, activation: 'leakyrelu', leakyreluAlpha: leak })
+        ? tf.fused.matMul({ a, b: weights, bias, activation: 'leakyrelu', leakyreluAlpha: this.#slope })
         : tf.fused.matMul({ a, b: weights, bias });
       activations.push(next as tf.Tensor2D);
     });
@@ -91,10 +96,10 @@ export class DeviceNetwork {
   }
 }
 
-/** Multiplies by the slope of the hidden units; frees its first argument. */
-function throughActivation(back: tf.Tensor2D, activation: tf.Tensor2D): tf.Tensor2D {
-  const slope = tf.step(activation, leak);
-  const delta = tf.mul(back, slope) as tf.Tensor2D;
-  tf.dispose([back, slope]);
+/** Multiplies by the derivative of the hidden units; frees its first argument. */
+function throughActivation(back: tf.Tensor2D, activation: tf.Tensor2D, slope: number): tf.Tensor2D {
+  const derivative = tf.step(activation, slope);
+  const delta = tf.mul(back, derivative) as tf.Tensor2D;
+  tf.dispose([back, derivative]);
   return delta;
 }
