@@ -1,5 +1,7 @@
 import { z } from 'zod';
 import type { ListedPart } from '../harness/catalogue.js';
+import { OnebatchError } from '../harness/errors.js';
+import { suggestion } from '../harness/nearest-word.js';
 import { catalogue } from './catalogue.js';
 import { type ExitCode, exitCodes } from './exit-codes.js';
 import { type SectionName, sectionNames } from './section-names.js';
@@ -13,9 +15,16 @@ const sections = {
   cautions: { title: 'Cautions, for methods of your own', parts: catalogue.cautions },
 } as const satisfies Record<SectionName, unknown>;
 
-/** Shows what plans can name: each task, method and part with its source, its settings and their defaults. */
-export function list(only: SectionName | undefined): ExitCode {
-  const chosen = only === undefined ? sectionNames : [only];
+/**
+ * Shows what plans can name: each task, method and part with its source, its settings and their defaults.
+ *
+ * @throws OnebatchError (`bad-input`) for a section that there is not.
+ */
+export function list(only: string | undefined): ExitCode {
+  const chosen = only === undefined ? sectionNames : sectionNames.filter((name) => name === only);
+  if (only !== undefined && chosen.length === 0) {
+    throw new OnebatchError('bad-input', `no section is named "${only}"; ${suggestion(only, sectionNames)}`);
+  }
   say(chosen.map((name) => describeSection(name)).join('\n'));
   return exitCodes.done;
 }

@@ -5,9 +5,16 @@ import { OnebatchError } from '../harness/errors.js';
 import { exitCodes } from './exit-codes.js';
 import { version } from './package-root.js';
 import { sectionNames } from './section-names.js';
-import { remark } from './terminal.js';
+import { endQuietlyWithoutReader, remark } from './terminal.js';
+import { explainUsage } from './usage.js';
 
-const program = yargs(hideBin(process.argv))
+const vocabulary = {
+  commands: ['rehearse', 'list'],
+  options: ['out', 'workers', 'seeds', 'help', 'version'],
+};
+
+const typed = hideBin(process.argv);
+const program = yargs(typed)
   .scriptName('onebatch')
   .locale('en')
   .usage('$0 <command>\n\nRehearse offline model-based optimization on tasks whose truth is known.')
@@ -18,8 +25,8 @@ const program = yargs(hideBin(process.argv))
       command
         .positional('plan', { type: 'string', describe: 'plan file; without one, the demo is run' })
         .option('out', { type: 'string', requiresArg: true, describe: 'output folder [default: out/<plan>]' })
-        .option('workers', { type: 'number', requiresArg: true, describe: 'worker threads [default: cores]' })
-        .option('seeds', { type: 'number', requiresArg: true, describe: "repeats, instead of the plan's" }),
+        .option('workers', { type: 'string', requiresArg: true, describe: 'worker threads [default: cores]' })
+        .option('seeds', { type: 'string', requiresArg: true, describe: "repeats, instead of the plan's" }),
     async (given) => {
       const { rehearse } = await import('./rehearse.js');
       process.exitCode = await rehearse(given);
@@ -28,21 +35,27 @@ const program = yargs(hideBin(process.argv))
   .command(
     'list [section]',
     'show tasks and methods with their settings and sources',
-    (command) => command.positional('section', { choices: sectionNames, describe: 'show this section only' }),
+    (command) =>
+      command.positional('section', {
+        type: 'string',
+        describe: `show this section only: ${sectionNames.join(', ')}`,
+      }),
     async ({ section }) => {
       const { list } = await import('./list.js');
       process.exitCode = list(section);
     },
   )
   .demandCommand(1, 'name a command; see onebatch --help')
-  .recommendCommands()
   .strict()
+  .parserConfiguration({ 'duplicate-arguments-array': false, 'boolean-negation': false })
   .version(version)
   .wrap(96)
-  .fail((message, error) => {
-    throw error ?? new OnebatchError('bad-input', message);
+  .fail((complaint, error) => {
+    if (error instanceof Error && error.name !== 'YError') throw error;
+    throw new OnebatchError('bad-input', explainUsage(complaint || error.message, typed, vocabulary));
   });
 
+endQuietlyWithoutReader();
 try {
   await program.parseAsync();
 } catch (error) {

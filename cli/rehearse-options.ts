@@ -11,8 +11,8 @@ import { packageRoot } from './package-root.js';
 export interface RehearseArguments {
   readonly plan?: string | undefined;
   readonly out?: string | undefined;
-  readonly workers?: number | undefined;
-  readonly seeds?: number | undefined;
+  readonly workers?: string | undefined;
+  readonly seeds?: string | undefined;
 }
 
 /** The plan that is run when none is named. */
@@ -28,6 +28,7 @@ export async function readRehearsal(
   catalogue: Catalogue,
 ): Promise<{ plan: Plan; out: string; workers: number }> {
   const file = given.plan ?? demoPlan;
+  if (given.out === '') throw new OnebatchError('bad-input', '--out: is empty; name a folder');
   const plan = readPlan(await readText(file), file, catalogue);
   const seeds = wholeNumber('--seeds', given.seeds) ?? plan.seeds;
   return {
@@ -53,7 +54,9 @@ const reasons: Readonly<Record<string, string>> = {
   EISDIR: 'is a folder; name a plan file',
 };
 
-function wholeNumber(option: string, value: number | undefined): number | undefined {
-  if (value === undefined || (Number.isInteger(value) && value >= 1 && value <= 100_000)) return value;
-  throw new OnebatchError('bad-input', `${option}: is ${value}, must be a whole number from 1 to 100000`);
+function wholeNumber(option: string, text: string | undefined): number | undefined {
+  if (text === undefined) return undefined;
+  const value = /^\d+$/.test(text) ? Number(text) : Number.NaN;
+  if (value >= 1 && value <= 100_000) return value;
+  throw new OnebatchError('bad-input', `${option}: is "${text}", must be a whole number from 1 to 100000`);
 }

@@ -7,3 +7,11 @@ export function say(text: string): void {
 export function remark(text: string): void {
   process.stderr.write(`${text}\n`);
 }
+
+/** Ends the program without a word when who reads its standard output has gone, as `onebatch list | head` does. */
+export function endQuietlyWithoutReader(): void {
+  process.stdout.on('error', (error: NodeJS.ErrnoException) => {
+    if (error.code !== 'EPIPE') throw error;
+    process.exit();
+  });
+}

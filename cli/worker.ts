@@ -11,7 +11,6 @@ export default async function answer({ job, started }: WorkerTask): Promise<Meth
   await useBackend(job.backend as BackendName);
   const method = methodFor(job.method);
   started.postMessage('started');
-  started.close();
   const start = performance.now();
   const seconds = () => (performance.now() - start) / 1000;
   try {
@@ -19,6 +18,8 @@ export default async function answer({ job, started }: WorkerTask): Promise<Meth
     return { kind: 'proposed', proposal, seconds: seconds() };
   } catch (error) {
     return { kind: 'threw', reason: firstLine(error), seconds: seconds() };
+  } finally {
+    started.close();
   }
 }
 
