@@ -16,7 +16,10 @@ export interface Crew {
   close(): Promise<void>;
 }
 
-/** What a worker is handed: the job, and a port on which it says that it has loaded and the method's time begins. */
+/**
+ * What a worker is handed: the job, and a port on which it says that it has loaded and the method's time begins. The
+ * worker leaves the port open until it answers: a port that closes before is how the crew learns that it died.
+ */
 export interface WorkerTask {
   readonly job: MethodJob;
   readonly started: MessagePort;
@@ -24,6 +27,8 @@ export interface WorkerTask {
 
 /** Seconds that a worker may take to load. */
 const loadSeconds = 60;
+/** Seconds that an answer may come after its worker's port closed. */
+const partingSeconds = 1;
 
 /**
  * Starts a crew.
@@ -38,6 +43,9 @@ export function openCrew(workerFile: URL, workers: number): Crew {
     concurrentTasksPerWorker: 1,
     isolateWorkers: false,
   });
+  pool.on('error', () => {
+    // A worker without a job died: the pool has replaced it, or the next job tells why it can't.
+  });
   let closing = false;
   return {
     workers,
@@ -50,13 +58,7 @@ export function openCrew(workerFile: URL, workers: number): Crew {
         return (await pool.run(task, options)) as MethodAnswer;
       } catch (error) {
         if (closing) return { kind: 'lost', reason: 'interrupted', seconds: 0 };
-        if (!limit.signal.aborted)
-          return { kind: 'lost', reason: `its worker ended: ${firstLine(error)}`, seconds: 0 };
-        return {
-          kind: 'lost',
-          reason: `took longer than its budget of ${budgetSeconds} s`,
-          seconds: budgetSeconds,
-        };
+        return lost(limit.signal.aborted ? limit.signal.reason : 'died', error, budgetSeconds);
       } finally {
         limit.clear();
       }
@@ -68,19 +70,37 @@ export function openCrew(workerFile: URL, workers: number): Crew {
   };
 }
 
+/** Why a job was given up. */
+type Ending = 'late' | 'exited' | 'died';
+
+function lost(ending: Ending, error: unknown, budgetSeconds: number): CrewResult {
+  if (ending === 'late') {
+    const reason = `took longer than its budget of ${budgetSeconds} s`;
+    return { kind: 'lost', reason, seconds: budgetSeconds };
+  }
+  const why = ending === 'exited' ? 'it exited without an answer' : firstLine(error);
+  return { kind: 'lost', reason: `its worker ended: ${why}`, seconds: 0 };
+}
+
 /** A time limit that begins to count when the worker says on its port that it has started. */
 function startLimit(budgetSeconds: number) {
   const controller = new AbortController();
   const { port1, port2 } = new MessageChannel();
-  let timer = setTimeout(() => controller.abort(), (loadSeconds + budgetSeconds) * 1000);
-  port1.once('message', () => {
+  const end = (ending: Ending) => controller.abort(ending);
+  let timer = setTimeout(end, (loadSeconds + budgetSeconds) * 1000, 'late');
+  const restart = (seconds: number, ending: Ending) => {
     clearTimeout(timer);
-    timer = setTimeout(() => controller.abort(), budgetSeconds * 1000);
-  });
+    timer = setTimeout(end, seconds * 1000, ending);
+  };
+  const onStart = () => restart(budgetSeconds, 'late');
+  const onClose = () => restart(partingSeconds, 'exited');
+  port1.once('message', onStart);
+  port1.once('close', onClose);
   return {
     signal: controller.signal,
     workerPort: port2,
     clear: () => {
+      port1.off('close', onClose);
       clearTimeout(timer);
       port1.close();
     },

@@ -34,6 +34,10 @@ export function judge(cell: Cell, stage: Stage, proposal: unknown, batchSize: nu
   const { designs, believed, spread, trace } = proposal as Proposal;
   const truth = stage.judge(designs);
   const beliefs = believed?.map(stage.normalize);
+  const optimism = beliefs === undefined ? undefined : meanOf(beliefs.map((belief, i) => belief - truth[i]!));
+  if (optimism !== undefined && !Number.isFinite(optimism)) {
+    return judgeFailure(cell, stage, 'believed scores too large to be averaged', batchSize);
+  }
   const best = quantile(truth, 1);
   return {
     row: {
@@ -44,7 +48,7 @@ export function judge(cell: Cell, stage: Stage, proposal: unknown, batchSize: nu
       median: quantile(truth, 0.5),
       bestVisible: stage.bestVisible,
       lift: best - stage.bestVisible,
-      optimism: beliefs === undefined ? undefined : meanOf(beliefs.map((belief, i) => belief - truth[i]!)),
+      optimism,
       visible: stage.designs.rows,
       batch: batchSize,
       distinct: countDistinctRows(designs),

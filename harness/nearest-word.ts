@@ -10,6 +10,7 @@ export function nearestWord(word: string, known: readonly string[]): string | un
 
 /** The end of a message about an unknown word: what was probably meant, and what there is. */
 export function suggestion(word: string, known: readonly string[]): string {
+  if (known.length === 0) return 'there is none';
   const near = nearestWord(word, known);
   const list = known.join(', ');
   return near === undefined ? `there is: ${list}` : `did you mean "${near}"? There is: ${list}`;

@@ -45,7 +45,7 @@ export async function runRehearsal(options: RehearsalOptions): Promise<void> {
       if (finished.has(cellId(cell.key))) continue;
       const stage = stageOf(cell);
       const result = await crew.run(jobFor(plan, cell, stage));
-      if (signal.aborted) return;
+      if (signal.aborted || stopped) return;
       const verdict = verdictOn(cell, stage, result, plan.batch);
       lastRecord = lastRecord.then(() => onFinished({ cell, stage, verdict, seconds: result.seconds }));
       await lastRecord;
@@ -57,7 +57,11 @@ export async function runRehearsal(options: RehearsalOptions): Promise<void> {
       throw error;
     }),
   );
-  await Promise.all(workers);
+  try {
+    await Promise.all(workers);
+  } finally {
+    await lastRecord.catch(() => undefined);
+  }
 }
 
 function jobFor(plan: Plan, cell: Cell, stage: Stage) {

@@ -1,11 +1,11 @@
-import { canonicalJson } from './canonical.js';
+import { canonicalJson, hashOf } from './canonical.js';
 import { type Catalogue, lookUpTask } from './catalogue.js';
 import { type Cell, settingsHash } from './cells.js';
 import { curtainLabel, drawCurtain } from './curtain.js';
 import type { Designs } from './designs.js';
 import { OnebatchError } from './errors.js';
 import type { Plan } from './plan/plan.js';
-import { rootStream, type Stream } from './random.js';
+import { openStream, rootStream, type Stream } from './random.js';
 import type { Space } from './space.js';
 import type { OptimumKnowledge } from './task.js';
 
@@ -42,7 +42,7 @@ export function setStage(plan: Plan, cell: Cell, catalogue: Pick<Catalogue, 'tas
   const view = drawCurtain(task, cell.curtain, plan.pool, stream.split('pool'));
   const { floor } = view.pool;
   const { value, known } = task.optimum;
-  const top = known === 'best-known' ? Math.max(value, ...[largest(view.pool.scores)]) : value;
+  const top = known === 'best-known' ? Math.max(value, largest(view.pool.scores)) : value;
   if (!(top > floor)) {
     throw new OnebatchError(
       'bad-settings',
@@ -65,17 +65,20 @@ export function setStage(plan: Plan, cell: Cell, catalogue: Pick<Catalogue, 'tas
   };
 }
 
-/** The stream that a cell's method draws from. */
+/** The stream that a cell's method draws from. Its path is hashed, so that a method can't read the task from it. */
 export function methodStream(plan: Plan, cell: Cell): Stream {
   const { family, settings } = cell.task;
-  return rootStream(plan.seed).split(
+  const { method, seed } = cell;
+  const keys = [
+    plan.seed,
     'method',
     family,
-    canonicalJson(settings),
+    settings,
     curtainLabel(cell.curtain),
-    settingsHash(cell.method),
-    cell.seed,
-  );
+    settingsHash(method),
+    seed,
+  ];
+  return openStream(JSON.stringify([hashOf(keys)]));
 }
 
 function largest(values: Float64Array): number {

@@ -53,7 +53,11 @@ const recordSchema = z.object({
 export function toRecord(row: CellRow): LedgerRecord {
   const { bestVisible, topKnown, optimism, ...same } = row;
   const record = { ...same, best_visible: bestVisible, top_known: topKnown, optimism: optimism ?? '' };
-  return Object.fromEntries(ledgerColumns.map((column) => [column, String(record[column])])) as LedgerRecord;
+  return Object.fromEntries(ledgerColumns.map((column) => [column, write(record[column])])) as LedgerRecord;
+}
+
+function write(value: string | number): string {
+  return Object.is(value, -0) ? '-0' : String(value);
 }
 
 /**

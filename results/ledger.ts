@@ -103,6 +103,12 @@ export async function readLedger(folder: string): Promise<{ rows: CellRow[]; sec
     );
   }
   records.forEach((values, i) => {
+    if (values.length > header.length) {
+      throw new OnebatchError(
+        'bad-ledger',
+        `${file}:${i + 2}: has ${values.length} values for ${header.length} columns; remove the line and run the plan again`,
+      );
+    }
     const record = Object.fromEntries(header.map((column, k) => [column, values[k] ?? '']));
     const row = fromRecord(record, file, i + 2);
     const id = cellId(row);
@@ -137,7 +143,17 @@ async function readLines(file: string): Promise<string[][]> {
       cause,
     });
   }
-  return readCsv(text.slice(0, text.lastIndexOf('\n') + 1));
+  try {
+    return await readCsv(text.slice(0, text.lastIndexOf('\n') + 1));
+  } catch (cause) {
+    throw new OnebatchError(
+      'bad-ledger',
+      `${file}: is damaged, it can't be read as CSV; mend it or rehearse anew`,
+      {
+        cause,
+      },
+    );
+  }
 }
 
 /** Opens a CSV file for appending, after giving a new one its header and an old one a whole last line. */

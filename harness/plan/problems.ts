@@ -12,10 +12,11 @@ export interface Problem {
 
 /** A key's place as people write it: `methods[2].settings.search.steps`. */
 export function writePath(path: KeyPath): string {
-  return path.reduce<string>(
-    (text, key) => (typeof key === 'number' ? `${text}[${key}]` : text === '' ? key : `${text}.${key}`),
-    '',
-  );
+  return path.reduce<string>((text, key) => {
+    if (typeof key === 'number') return `${text}[${key}]`;
+    const word = key === '' ? '""' : key;
+    return text === '' ? word : `${text}.${word}`;
+  }, '');
 }
 
 /** Checks a value against a schema; problems are worded for people and carry the path of the key at fault. */
@@ -78,7 +79,8 @@ const nouns: Readonly<Record<string, string>> = {
 };
 
 function show(value: unknown): string {
-  const text = JSON.stringify(value) ?? String(value);
+  if (value === null) return 'empty';
+  const text = typeof value === 'number' ? String(value) : (JSON.stringify(value) ?? String(value));
   return text.length > 40 ? `${text.slice(0, 37)}…` : text;
 }
 
@@ -89,15 +91,18 @@ function valueAt(value: unknown, path: KeyPath): unknown {
   );
 }
 
-/** The keys that a schema knows at a path, through defaults, options and lists. */
+/** The keys that a schema knows at a path, through defaults, options, lists and alternatives. */
 function keysAt(schema: z.ZodType, path: KeyPath): string[] {
-  let current: z.ZodType = unwrap(schema);
-  for (const key of path) {
-    if (current instanceof z.ZodObject) current = unwrap(current.shape[key] as z.ZodType);
-    else if (current instanceof z.ZodArray) current = unwrap(current.element as z.ZodType);
-    else return [];
+  const here = unwrap(schema);
+  if (here instanceof z.ZodUnion) {
+    return here.options.flatMap((option) => keysAt(option as z.ZodType, path));
   }
-  return current instanceof z.ZodObject ? Object.keys(current.shape) : [];
+  const [key, ...rest] = path;
+  if (here instanceof z.ZodArray && key !== undefined) return keysAt(here.element as z.ZodType, rest);
+  if (!(here instanceof z.ZodObject)) return [];
+  if (key === undefined) return Object.keys(here.shape);
+  const field = here.shape[key] as z.ZodType | undefined;
+  return field === undefined ? [] : keysAt(field, rest);
 }
 
 function unwrap(schema: z.ZodType): z.ZodType {

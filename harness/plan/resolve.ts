@@ -1,7 +1,7 @@
 import type { z } from 'zod';
 import type { Catalogue, ListedPart, MethodReference } from '../catalogue.js';
 import { lookUpMethod } from '../catalogue.js';
-import type { CurtainSpec } from '../curtain.js';
+import { type CurtainSpec, curtainLabel } from '../curtain.js';
 import { suggestion } from '../nearest-word.js';
 import type { MethodEntry, PlanFile, TaskEntry } from './file-schema.js';
 import type { Plan, PlannedMethod, PlannedTask, Settings } from './plan.js';
@@ -23,6 +23,10 @@ export function resolve(
     return resolveMethod(entry, catalogue, ['methods', i], problems) ?? [];
   });
   problems.push(...repeatedLabels('tasks', tasks), ...repeatedLabels('methods', methods));
+  problems.push(...repeatedCurtains(file.curtains, ['curtains']));
+  file.tasks.forEach(({ curtains = [] }, i) => {
+    problems.push(...repeatedCurtains(curtains, ['tasks', i, 'curtains']));
+  });
   const { name = defaultName, seed, seeds, pool, batch, budgetSeconds, backend, keep } = file;
   return { plan: { name, seed, seeds, pool, batch, budgetSeconds, backend, keep, tasks, methods }, problems };
 }
@@ -133,4 +137,13 @@ function repeatedLabels(list: string, entries: readonly { label: string }[]): Pr
       },
     ];
   });
+}
+
+function repeatedCurtains(curtains: readonly CurtainSpec[], at: KeyPath): Problem[] {
+  const labels = curtains.map(curtainLabel);
+  return labels.flatMap((label, i) =>
+    labels.indexOf(label) === i
+      ? []
+      : [{ path: [...at, i], message: `is the second curtain "${label}"; keep one of the two` }],
+  );
 }
