@@ -77,7 +77,7 @@ export class DeviceNetwork {
 
   /** The inputs and each layer's activations, outputs last. */
   #forward(rows: Float32Array, n: number): tf.Tensor2D[] {
-    const activations: tf.Tensor2D[] = [tf.tensor2d(rows, [n, rows.length / n])];
+    const activations: tf.Tensor2D[] = [tf.tensor2d(rows, [n, this.#weights[0]!.shape[0]])];
     this.#weights.forEach((weights, layer) => {
       const a = activations[layer]!;
       const bias = this.#biases[layer]!;

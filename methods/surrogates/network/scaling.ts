@@ -1,5 +1,6 @@
 import { type Matrix, zeros } from '../../../harness/designs.js';
 import type { Encoding } from '../../../harness/encoding.js';
+import { type Column, countValues } from '../../../harness/space.js';
 
 /** Moves every encoded feature to mean 0 and standard deviation 1 over designs drawn uniformly from the space. */
 export interface InputScaling {
@@ -12,11 +13,17 @@ export function makeScaling(encoding: Encoding): InputScaling {
   const shifts = new Float64Array(encoding.width);
   const factors = new Float64Array(encoding.width);
   for (const { column, offset, width } of encoding.blocks) {
-    const isCategory = column.kind === 'category';
-    shifts.fill(isCategory ? 1 / width : 0.5, offset, offset + width);
-    factors.fill(isCategory ? width / Math.sqrt(width - 1) : Math.sqrt(12), offset, offset + width);
+    shifts.fill(column.kind === 'category' ? 1 / width : 0.5, offset, offset + width);
+    factors.fill(1 / deviationOf(column), offset, offset + width);
   }
   return { shifts, factors };
+}
+
+/** Standard deviation of an encoded feature of the column: of a level's 0 or 1, of k equal steps, of a whole range. */
+function deviationOf(column: Column): number {
+  const values = countValues(column);
+  if (column.kind === 'category') return Math.sqrt(values - 1) / values;
+  return Math.sqrt(column.kind === 'integer' ? (values + 1) / (12 * (values - 1)) : 1 / 12);
 }
 
 /** Encoded rows as a network's inputs, (n × width) in 32-bit floats. */
