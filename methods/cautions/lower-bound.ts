@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { takeRows } from '../../harness/designs.js';
 import { OnebatchError } from '../../harness/errors.js';
 import { defineCaution, type Prediction } from '../parts.js';
 
@@ -12,15 +13,13 @@ export const lowerBound = defineCaution({
   }),
   async prepare(surrogate, surrogateSettings, table, { spreads }, stream) {
     const model = await surrogate.fit(table, surrogateSettings, stream);
-    const bound = ({ mean, spread }: Prediction) => {
-      if (spread === undefined) {
-        throw new OnebatchError(
-          'method-cannot',
-          `caution "lower-bound" needs a surrogate with a spread; "${surrogate.name}" has none, use "network-ensemble"`,
-        );
-      }
-      return mean.map((m, i) => m - spreads * spread[i]!);
-    };
+    if (model.predict(takeRows(table.x, [0])).spread === undefined) {
+      throw new OnebatchError(
+        'method-cannot',
+        `caution "lower-bound" needs a surrogate with a spread; "${surrogate.name}" has none, use "network-ensemble"`,
+      );
+    }
+    const bound = ({ mean, spread }: Prediction) => mean.map((m, i) => m - spreads * spread![i]!);
     const { gradient } = model;
     return {
       value: (x) => bound(model.predict(x)),
