@@ -11,8 +11,8 @@ export function findFault(proposal: unknown, space: Space, batchSize: number): s
   const { designs, believed, spread, trace } = proposal as Partial<Proposal>;
   return (
     findFaultInDesigns(designs, space, batchSize) ??
-    findFaultInNumbers('believed', believed, batchSize) ??
-    findFaultInNumbers('spread', spread, batchSize) ??
+    (believed === undefined ? undefined : findFaultInNumbers('believed', believed, batchSize)) ??
+    (spread === undefined ? undefined : findFaultInSpread(spread, batchSize)) ??
     findFaultInTrace(trace, space)
   );
 }
@@ -33,11 +33,17 @@ function findFaultInDesigns(designs: unknown, space: Space, rows?: number): stri
 }
 
 function findFaultInNumbers(name: string, values: unknown, rows: number): string | undefined {
-  if (values === undefined) return undefined;
   if (!(values instanceof Float64Array) || values.length !== rows)
     return `"${name}" is not one number a design`;
   const at = values.findIndex((value) => !Number.isFinite(value));
   return at < 0 ? undefined : `"${name}" of design ${at + 1} is ${values[at]}, not a finite number`;
+}
+
+function findFaultInSpread(spread: unknown, rows: number): string | undefined {
+  const fault = findFaultInNumbers('spread', spread, rows);
+  if (fault !== undefined) return fault;
+  const at = (spread as Float64Array).findIndex((value) => value < 0);
+  return at < 0 ? undefined : `"spread" of design ${at + 1} is ${(spread as Float64Array)[at]}, less than 0`;
 }
 
 function findFaultInTrace(trace: unknown, space: Space): string | undefined {

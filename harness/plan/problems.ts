@@ -10,11 +10,11 @@ export interface Problem {
   readonly message: string;
 }
 
-/** A key's place as people write it: `methods[2].settings.search.steps`. */
+/** A key's place as people write it: `methods[2].settings.search.steps`; a key that is no plain word in quotes. */
 export function writePath(path: KeyPath): string {
   return path.reduce<string>((text, key) => {
     if (typeof key === 'number') return `${text}[${key}]`;
-    const word = key === '' ? '""' : key;
+    const word = /^[^\s"\p{C}]+$/u.test(key) ? key : JSON.stringify(key);
     return text === '' ? word : `${text}.${word}`;
   }, '');
 }
@@ -78,7 +78,8 @@ const nouns: Readonly<Record<string, string>> = {
   record: 'a group of keys',
 };
 
-function show(value: unknown): string {
+/** A value as a message shows it, on one line and not too long. */
+export function show(value: unknown): string {
   if (value === null) return 'empty';
   const text = typeof value === 'number' ? String(value) : (JSON.stringify(value) ?? String(value));
   return text.length > 40 ? `${text.slice(0, 37)}…` : text;

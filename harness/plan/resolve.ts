@@ -5,7 +5,7 @@ import { type CurtainSpec, curtainLabel } from '../curtain.js';
 import { suggestion } from '../nearest-word.js';
 import type { MethodEntry, PlanFile, TaskEntry } from './file-schema.js';
 import type { Plan, PlannedMethod, PlannedTask, Settings } from './plan.js';
-import { check, type KeyPath, type Problem } from './problems.js';
+import { check, type KeyPath, type Problem, show } from './problems.js';
 
 const partKeys = { surrogate: 'surrogates', search: 'searches', caution: 'cautions' } as const;
 
@@ -106,7 +106,7 @@ function find<Part extends ListedPart>(
   const found = parts.find((part) => part.name === name);
   if (found === undefined) {
     const known = parts.map((part) => part.name);
-    problems.push({ path, message: `no ${kind} is named "${name}"; ${suggestion(name, known)}` });
+    problems.push({ path, message: `no ${kind} is named ${show(name)}; ${suggestion(name, known)}` });
   }
   return found;
 }
