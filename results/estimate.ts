@@ -7,10 +7,10 @@ import { stratifiedBootstrap } from './statistics/stratified-bootstrap.js';
 export const intervalLevel = 0.95;
 
 /**
- * How an interval was made: `bca` and `student-t` are of a mean over seeds, `stratified-percentile` is of an aggregate
- * over tasks. `constant` says that all values are equal, so that both bounds are at the value.
+ * How an interval was made: `bca` and `student-t` are of a mean over seeds, `stratified-percentile` and `stratified-t`
+ * are of an aggregate over tasks. `constant` says that all values are equal, so that both bounds are at the value.
  */
-export type IntervalMethod = 'bca' | 'student-t' | 'constant' | 'stratified-percentile';
+export type IntervalMethod = 'bca' | 'student-t' | 'constant' | 'stratified-percentile' | 'stratified-t';
 
 /** An interval, with what made it. */
 export interface Interval {

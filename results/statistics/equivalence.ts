@@ -49,10 +49,7 @@ export function equivalenceTest(
   checkValues(differences, 'differences', 2);
   const { n, mean, standardError } = moments(differences);
   const degreesOfFreedom = n - 1;
-  const lower = testAbove(mean + margin, standardError!, degreesOfFreedom);
-  const mirrored = testAbove(margin - mean, standardError!, degreesOfFreedom);
-  const upper = { t: -mirrored.t, p: mirrored.p };
-  const p = Math.max(lower.p, upper.p);
+  const { lower, upper, p } = testWithin(margin, { mean, standardError: standardError!, degreesOfFreedom });
   const { level, low, high } = studentInterval(differences, { level: 1 - 2 * alpha });
   return {
     method: standardError === 0 ? 'constant' : 'two-one-sided-t',
@@ -70,6 +67,22 @@ export function equivalenceTest(
     low,
     high,
   };
+}
+
+/**
+ * The two one-sided t tests of a mean with a known standard error and degrees of freedom, as for a mean over several
+ * tasks: `lower` alone tests that the mean is not worse than −margin (non-inferiority).
+ *
+ * @param margin above 0, in the unit of the mean.
+ */
+export function testWithin(
+  margin: number,
+  about: { readonly mean: number; readonly standardError: number; readonly degreesOfFreedom: number },
+): { readonly lower: OneSidedTest; readonly upper: OneSidedTest; readonly p: number } {
+  const { mean, standardError, degreesOfFreedom } = about;
+  const lower = testAbove(mean + margin, standardError, degreesOfFreedom);
+  const mirrored = testAbove(margin - mean, standardError, degreesOfFreedom);
+  return { lower, upper: { t: -mirrored.t, p: mirrored.p }, p: Math.max(lower.p, mirrored.p) };
 }
 
 /** Test of a mean of 0 or less against a mean above 0. */
