@@ -14,7 +14,8 @@ export default async function answer({ job, started }: WorkerTask): Promise<Meth
   const start = performance.now();
   const seconds = () => (performance.now() - start) / 1000;
   try {
-    const proposal = await method.propose(offerFor(job), job.settings);
+    const proposed = await method.propose(offerFor(job), job.settings);
+    const proposal = structuredClone(proposed); // throws here, with a reason, what could not be posted
     return { kind: 'proposed', proposal, seconds: seconds() };
   } catch (error) {
     return { kind: 'threw', reason: firstLine(error), seconds: seconds() };

@@ -43,8 +43,10 @@ export function openCrew(workerFile: URL, workers: number): Crew {
     concurrentTasksPerWorker: 1,
     isolateWorkers: false,
   });
-  pool.on('error', () => {
-    // A worker without a job died: the pool has replaced it, or the next job tells why it can't.
+  const limits = new Set<Limit>();
+  // A worker that had no job died: it could not be loaded, and jobs that wait for it would wait in vain.
+  pool.on('error', (error) => {
+    for (const limit of limits) limit.giveUp(died(error));
   });
   let closing = false;
   return {
@@ -52,14 +54,16 @@ export function openCrew(workerFile: URL, workers: number): Crew {
     async run(job) {
       const { budgetSeconds } = job.offer;
       const limit = startLimit(budgetSeconds);
+      limits.add(limit);
       try {
         const task: WorkerTask = { job, started: limit.workerPort };
         const options = { signal: limit.signal, transferList: [limit.workerPort] };
         return (await pool.run(task, options)) as MethodAnswer;
       } catch (error) {
         if (closing) return { kind: 'lost', reason: 'interrupted', seconds: 0 };
-        return lost(limit.signal.aborted ? limit.signal.reason : 'died', error, budgetSeconds);
+        return limit.signal.aborted ? (limit.signal.reason as CrewResult) : died(error);
       } finally {
+        limits.delete(limit);
         limit.clear();
       }
     },
@@ -70,35 +74,49 @@ export function openCrew(workerFile: URL, workers: number): Crew {
   };
 }
 
-/** Why a job was given up. */
-type Ending = 'late' | 'exited' | 'died';
+function died(error: unknown): CrewResult {
+  return { kind: 'lost', reason: `its worker ended: ${firstLine(error)}`, seconds: 0 };
+}
 
-function lost(ending: Ending, error: unknown, budgetSeconds: number): CrewResult {
-  if (ending === 'late') {
-    const reason = `took longer than its budget of ${budgetSeconds} s`;
-    return { kind: 'lost', reason, seconds: budgetSeconds };
-  }
-  const why = ending === 'exited' ? 'it exited without an answer' : firstLine(error);
-  return { kind: 'lost', reason: `its worker ended: ${why}`, seconds: 0 };
+/** A job's time limit. */
+interface Limit {
+  /** Aborted when the job is given up; the reason is its `CrewResult`. */
+  readonly signal: AbortSignal;
+  readonly workerPort: MessagePort;
+  /** Gives the job up, unless its worker said that it has started. */
+  giveUp(result: CrewResult): void;
+  clear(): void;
 }
 
 /** A time limit that begins to count when the worker says on its port that it has started. */
-function startLimit(budgetSeconds: number) {
+function startLimit(budgetSeconds: number): Limit {
+  const late: CrewResult = {
+    kind: 'lost',
+    reason: `took longer than its budget of ${budgetSeconds} s`,
+    seconds: budgetSeconds,
+  };
   const controller = new AbortController();
   const { port1, port2 } = new MessageChannel();
-  const end = (ending: Ending) => controller.abort(ending);
-  let timer = setTimeout(end, (loadSeconds + budgetSeconds) * 1000, 'late');
-  const restart = (seconds: number, ending: Ending) => {
+  const end = (result: CrewResult) => controller.abort(result);
+  let started = false;
+  let timer = setTimeout(end, (loadSeconds + budgetSeconds) * 1000, late);
+  const restart = (seconds: number, result: CrewResult) => {
     clearTimeout(timer);
-    timer = setTimeout(end, seconds * 1000, ending);
+    timer = setTimeout(end, seconds * 1000, result);
   };
-  const onStart = () => restart(budgetSeconds, 'late');
-  const onClose = () => restart(partingSeconds, 'exited');
+  const onStart = () => {
+    started = true;
+    restart(budgetSeconds, late);
+  };
+  const onClose = () => restart(partingSeconds, died('it exited without an answer'));
   port1.once('message', onStart);
   port1.once('close', onClose);
   return {
     signal: controller.signal,
     workerPort: port2,
+    giveUp: (result) => {
+      if (!started) end(result);
+    },
     clear: () => {
       port1.off('close', onClose);
       clearTimeout(timer);
