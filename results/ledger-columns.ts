@@ -27,13 +27,14 @@ export const ledgerColumns = [
 export type LedgerRecord = Readonly<Record<(typeof ledgerColumns)[number], string>>;
 
 const finite = z.string().regex(/\S/).transform(Number).pipe(z.number());
+const whole = finite.pipe(z.int().min(0));
 
 const recordSchema = z.object({
   task: z.string().min(1),
   curtain: z.string().min(1),
   method: z.string().min(1),
   settings: z.string().regex(/^[0-9a-f]{8}$/),
-  seed: finite,
+  seed: whole,
   status: z.enum(['done', 'failed']),
   reason: z.string(),
   best: finite,
@@ -41,9 +42,9 @@ const recordSchema = z.object({
   best_visible: finite,
   lift: finite,
   optimism: z.union([z.literal('').transform(() => undefined), finite]),
-  visible: finite,
-  batch: finite,
-  distinct: finite,
+  visible: whole,
+  batch: whole,
+  distinct: whole,
   floor: finite,
   top: finite,
   top_known: z.enum(['published', 'exact', 'best-known']),

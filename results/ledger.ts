@@ -41,10 +41,11 @@ export class Ledger {
    * @throws OnebatchError (`bad-ledger`) when a whole line can't be read or a cell stands there twice.
    */
   static async open(folder: string): Promise<Ledger> {
-    const ledgerFile = await openWhole(join(folder, ledgerName), ledgerColumns);
-    const timingsFile = await openWhole(join(folder, timingsName), timingColumns);
+    const files = [join(folder, ledgerName), join(folder, timingsName)] as const;
+    await makeWhole(files[0], ledgerColumns);
+    await makeWhole(files[1], timingColumns);
     const { rows, seconds } = await readLedger(folder);
-    return new Ledger(folder, rows, seconds, ledgerFile, timingsFile);
+    return new Ledger(folder, rows, seconds, await open(files[0], 'a'), await open(files[1], 'a'));
   }
 
   get rows(): readonly CellRow[] {
@@ -156,8 +157,8 @@ async function readLines(file: string): Promise<string[][]> {
   }
 }
 
-/** Opens a CSV file for appending, after giving a new one its header and an old one a whole last line. */
-async function openWhole(file: string, columns: readonly string[]): Promise<FileHandle> {
+/** Gives a new CSV file its header, and an old one a whole last line. */
+async function makeWhole(file: string, columns: readonly string[]): Promise<void> {
   const text = await readFile(file, 'utf8').catch((error: NodeJS.ErrnoException) => {
     if (error.code === 'ENOENT') return '';
     throw error;
@@ -165,7 +166,6 @@ async function openWhole(file: string, columns: readonly string[]): Promise<File
   const whole = text.slice(0, text.lastIndexOf('\n') + 1);
   if (whole === '') await writeFile(file, await writeCsv(columns, []));
   else if (whole.length < text.length) await replaceFile(file, whole);
-  return open(file, 'a');
 }
 
 /** Writes a file under another name and puts it in place in one step. */

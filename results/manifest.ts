@@ -1,6 +1,6 @@
 import { readFile } from 'node:fs/promises';
 import { join } from 'node:path';
-import { hashOf } from '../harness/canonical.js';
+import { canonicalJson, hashOf } from '../harness/canonical.js';
 import { OnebatchError } from '../harness/errors.js';
 import type { Plan } from '../harness/plan/plan.js';
 import { replaceFile } from './ledger.js';
@@ -51,13 +51,19 @@ export async function readManifest(folder: string): Promise<Provenance | undefin
 
 /** What differs between two values, as lines `path: old -> new`; empty when nothing does. */
 export function differences(before: unknown, after: unknown, path = ''): string[] {
-  if (hashOf(before ?? null) === hashOf(after ?? null)) return [];
-  if (!isGroup(before) || !isGroup(after)) return [`${path}: ${show(before)} -> ${show(after)}`];
+  if (canonicalJson(before) === canonicalJson(after)) return [];
+  if (!isGroup(before) || !isGroup(after) || Array.isArray(before) !== Array.isArray(after)) {
+    return [`${path || 'all'}: ${show(before)} -> ${show(after)}`];
+  }
   const keys = [...new Set([...Object.keys(before), ...Object.keys(after)])];
   return keys.flatMap((key) => {
     const step = Array.isArray(before) ? `[${key}]` : path === '' ? key : `.${key}`;
-    return differences(before[key], after[key], `${path}${step}`);
+    return differences(ownValue(before, key), ownValue(after, key), `${path}${step}`);
   });
+}
+
+function ownValue(group: Record<string, unknown>, key: string): unknown {
+  return Object.hasOwn(group, key) ? group[key] : undefined;
 }
 
 function isGroup(value: unknown): value is Record<string, unknown> {
