@@ -96,27 +96,28 @@ describe('common practice: naive gradient ascent under a ceiling curtain', () =>
     expectAbove(differences(tenth, along(100, 'truth')));
   });
 
-  test('ends with a batch whose median is below the best visible design, believing it far above', () => {
-    const rows = verdicts.get('naive')!.map(({ row }) => row);
-    expectAbove(rows.map(({ bestVisible, median }) => bestVisible - median));
-    expectAbove(rows.map(({ optimism }) => optimism! - 0.1));
+  test('believes its batch to be far better than it is, by more than a tenth of the way from worst to optimum', () => {
+    expectAbove(verdicts.get('naive')!.map(({ row }) => row.optimism! - 0.1));
   });
 });
 
-describe.each(['fixed weight', 'adjusted weight', 'lower bound'])(
-  'common practice: caution by %s',
-  (label) => {
-    const optimismOf = (of: string) => verdicts.get(of)!.map(({ row }) => row.optimism!);
+describe('common practice: caution', () => {
+  const optimismOf = (of: string) => verdicts.get(of)!.map(({ row }) => row.optimism!);
 
-    test('lowers the optimism of the same network climbed by the same steps', () => {
+  test.each(['fixed weight', 'adjusted weight', 'lower bound'])(
+    'by %s lowers the optimism of the same network climbed by the same steps',
+    (label) => {
       expectAbove(differences(optimismOf('naive'), optimismOf(label)));
-    });
+    },
+  );
 
-    test('finds a design better than the best visible one', () => {
+  test.each(['fixed weight', 'adjusted weight'])(
+    'by conservative training with %s finds a design better than the best visible one',
+    (label) => {
       expectAbove(verdicts.get(label)!.map(({ row }) => row.lift));
-    });
-  },
-);
+    },
+  );
+});
 
 /** Expects a mean more than two standard errors above 0. */
 function expectAbove(values: readonly number[]): void {
