@@ -65,10 +65,14 @@ export function setStage(plan: Plan, cell: Cell, catalogue: Pick<Catalogue, 'tas
   };
 }
 
-/** The stream that a cell's method draws from. Its path is hashed, so that a method can't read the task from it. */
+/**
+ * The stream that a cell's method draws from. Its path is hashed, so that a method can't read the task from it. A method
+ * seed that is the plan's seed changes nothing.
+ */
 export function methodStream(plan: Plan, cell: Cell): Stream {
   const { family, settings } = cell.task;
   const { method, seed } = cell;
+  const { methodSeed = plan.seed } = plan;
   const keys = [
     plan.seed,
     'method',
@@ -77,6 +81,7 @@ export function methodStream(plan: Plan, cell: Cell): Stream {
     curtainLabel(cell.curtain),
     settingsHash(method),
     seed,
+    ...(methodSeed === plan.seed ? [] : [methodSeed]),
   ];
   return openStream(JSON.stringify([hashOf(keys)]));
 }

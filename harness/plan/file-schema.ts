@@ -28,6 +28,7 @@ const methodEntry = z.strictObject({
 export const planFileSchema = z.strictObject({
   name: label.optional(),
   seed: z.int().min(0).default(1),
+  methodSeed: z.int().min(0).optional(),
   seeds: z.int().min(1).max(100_000).default(16),
   pool: z.int().min(10).max(10_000_000).default(2000),
   batch: z.int().min(1).max(100_000).default(128),

@@ -30,6 +30,8 @@ export interface Plan {
   readonly name: string;
   /** Seeds every stream of the rehearsal. */
   readonly seed: number;
+  /** Gives methods other random numbers on the same tasks and pools; absent where the plan doesn't name one. */
+  readonly methodSeed?: number;
   /** Repeats: cells run with seeds 1 … seeds. */
   readonly seeds: number;
   /** Designs in a pool. */

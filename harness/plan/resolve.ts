@@ -27,8 +27,12 @@ export function resolve(
   file.tasks.forEach(({ curtains = [] }, i) => {
     problems.push(...repeatedCurtains(curtains, ['tasks', i, 'curtains']));
   });
-  const { name = defaultName, seed, seeds, pool, batch, budgetSeconds, backend, keep } = file;
-  return { plan: { name, seed, seeds, pool, batch, budgetSeconds, backend, keep, tasks, methods }, problems };
+  const { name = defaultName, seed, methodSeed, seeds, pool, batch, budgetSeconds, backend, keep } = file;
+  const seeded = methodSeed === undefined ? { seed } : { seed, methodSeed };
+  return {
+    plan: { name, ...seeded, seeds, pool, batch, budgetSeconds, backend, keep, tasks, methods },
+    problems,
+  };
 }
 
 function resolveTask(

@@ -4,7 +4,8 @@ import { readPlan } from '../../../harness/plan/read.js';
 import { toyCatalogue } from '../toy-catalogue.js';
 import { toyPlan } from '../toy-plan.js';
 
-const keys = 'name, seed, seeds, pool, batch, budgetSeconds, backend, keep, tasks, curtains, methods';
+const keys =
+  'name, seed, methodSeed, seeds, pool, batch, budgetSeconds, backend, keep, tasks, curtains, methods';
 const good = { tasks: 'tasks: [slope]', methods: 'methods: [scripted]' };
 
 /** The lines that a plan is refused with. */
