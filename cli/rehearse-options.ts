@@ -30,11 +30,11 @@ export async function readRehearsal(
   const file = given.plan ?? demoPlan;
   if (given.out === '') throw new OnebatchError('bad-input', '--out: is empty; name a folder');
   const plan = readPlan(await readText(file), file, catalogue);
-  const seeds = wholeNumber('--seeds', given.seeds) ?? plan.seeds;
+  const seeds = wholeNumber('--seeds', given.seeds, 100_000) ?? plan.seeds;
   return {
     plan: { ...plan, seeds },
     out: given.out ?? join('out', plan.name),
-    workers: wholeNumber('--workers', given.workers) ?? availableParallelism(),
+    workers: wholeNumber('--workers', given.workers, 256) ?? availableParallelism(),
   };
 }
 
@@ -54,9 +54,9 @@ const reasons: Readonly<Record<string, string>> = {
   EISDIR: 'is a folder; name a plan file',
 };
 
-function wholeNumber(option: string, text: string | undefined): number | undefined {
+function wholeNumber(option: string, text: string | undefined, most: number): number | undefined {
   if (text === undefined) return undefined;
   const value = /^\d+$/.test(text) ? Number(text) : Number.NaN;
-  if (value >= 1 && value <= 100_000) return value;
-  throw new OnebatchError('bad-input', `${option}: is "${text}", must be a whole number from 1 to 100000`);
+  if (value >= 1 && value <= most) return value;
+  throw new OnebatchError('bad-input', `${option}: is "${text}", must be a whole number from 1 to ${most}`);
 }

@@ -57,14 +57,14 @@ export class Ledger {
     return this.#seconds;
   }
 
-  /** Adds a finished cell and flushes it to the disk. */
+  /** Adds a finished cell and flushes it to the disk. Seconds are kept to the thousandth, as they are on the disk. */
   async append(row: CellRow, seconds: number): Promise<void> {
     const timing = { ...row, seconds: seconds.toFixed(3) };
     await this.#timingsFile.appendFile(await writeCsv(timingColumns, [timing], { header: false }));
     await this.#ledgerFile.appendFile(await writeCsv(ledgerColumns, [toRecord(row)], { header: false }));
     await this.#ledgerFile.datasync();
     this.#rows.push(row);
-    this.#seconds.set(cellId(row), seconds);
+    this.#seconds.set(cellId(row), Number(timing.seconds));
   }
 
   /**

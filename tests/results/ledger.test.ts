@@ -58,6 +58,16 @@ describe('a ledger', () => {
       ),
     ));
 
+  test('keeps the same seconds in memory and on the disk', () =>
+    withFolder(async (folder) => {
+      const ledger = await Ledger.open(folder);
+      await ledger.append(rows[0]!, 0.123456);
+      await ledger.close();
+      const expected = new Map([[cellId(rows[0]!), 0.123]]);
+      expect(ledger.seconds).toEqual(expected);
+      expect((await readLedger(folder)).seconds).toEqual(expected);
+    }));
+
   test('has a row on the disk when append resolves', () =>
     withFolder(async (folder) => {
       const ledger = await Ledger.open(folder);
