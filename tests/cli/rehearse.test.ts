@@ -187,94 +187,8 @@ describe('a rehearsal with methods that fail', () => {
   });
 });
 
-describe.concurrent('bad input gets one clear line, exit code 2, and nothing is written:', () => {
-  const plan = (...lines: string[]) => ['tasks: [branin]', 'methods: [jitter]', ...lines].join('\n');
-
-  test.each<[string, string, string[], string | RegExp]>([
-    [
-      'a misspelt task',
-      'tasks: [brannin]\nmethods: [jitter]',
-      [],
-      /^p\.yaml:1: tasks\[0\]\.task: no task is named "brannin"; did you mean "branin"\? There is: branin, .+\n$/,
-    ],
-    [
-      'a negative seed count in the plan',
-      plan('seeds: -2'),
-      [],
-      'p.yaml:3: seeds: is -2, must be at least 1\n',
-    ],
-    [
-      'a negative seed count on the command line',
-      plan(),
-      ['--seeds', '-2'],
-      '--seeds: is "-2", must be a whole number from 1 to 100000\n',
-    ],
-    [
-      'a settings key that does not exist',
-      'tasks: [branin]\nmethods: [{ method: jitter, settings: { stepp: 1 } }]',
-      [],
-      'p.yaml:2: methods[0].settings.stepp: no such key; did you mean "step"? There is: parents, step, changes\n',
-    ],
-    [
-      'settings that contradict each other',
-      'tasks: [{ task: ising, settings: { length: 4, range: 4 } }]\nmethods: [jitter]',
-      [],
-      /^ising: range must be at most length − 1 = 3, got 4; .+\n$/,
-    ],
-    ['a file of random bytes', '\u0000\u0007{[\uFFFD', [], /^p\.yaml:1: .+\n$/],
-    [
-      'an option that does not exist',
-      plan(),
-      ['--sedes', '3'],
-      'unknown argument "sedes"; did you mean "--seeds"?\n',
-    ],
-    ['an option without its value', plan(), ['--out'], '--out needs a value; see onebatch --help\n'],
-    [
-      'an output folder that is a file',
-      plan(),
-      ['--out', 'p.yaml'],
-      "p.yaml: can't be used as output folder (EEXIST)\n",
-    ],
-  ])('%s', async (_, text, words, line) => {
-    const folder = await mkdtemp(at('bad-'));
-    await writeFile(join(folder, 'p.yaml'), text);
-    const ending = await onebatch(folder, ['rehearse', 'p.yaml', ...words]);
-    expect(ending).toEqual({
-      code: 2,
-      signal: null,
-      stdout: '',
-      stderr: typeof line === 'string' ? line : expect.stringMatching(line),
-    });
-    expect(await readdir(folder)).toEqual(['p.yaml']);
-    expect(await readFile(join(folder, 'p.yaml'), 'utf8')).toBe(text);
-  });
-
-  test.each<[string, string[], string]>([
-    [
-      'a plan that is not there',
-      ['rehearse', 'none.yaml'],
-      'none.yaml: there is no such plan file; check the path, or leave it out to run the demo\n',
-    ],
-    ['a folder as a plan', ['rehearse', 'folder'], 'folder: is a folder; name a plan file\n'],
-    ['no command', [], 'name a command; see onebatch --help\n'],
-    [
-      'a command that does not exist',
-      ['rehears'],
-      'there is no command "rehears"; did you mean "rehearse"? There is: rehearse, list\n',
-    ],
-    [
-      'a section that does not exist',
-      ['list', 'taks'],
-      'no section is named "taks"; did you mean "tasks"? There is: tasks, methods, surrogates, searches, cautions\n',
-    ],
-  ])('%s', async (_, words, line) => {
-    const folder = await mkdtemp(at('bad-'));
-    await mkdir(join(folder, 'folder'));
-    expect(await onebatch(folder, words)).toEqual({ code: 2, signal: null, stdout: '', stderr: line });
-    expect(await readdir(folder)).toEqual(['folder']);
-  });
-
-  test('a changed plan in the folder of another, saying what changed', async () => {
+describe('a rehearsal is refused with one clear line and exit code 2', () => {
+  test('in the folder of another plan, saying what changed', async () => {
     const before = await contents('one', true);
     const ending = await rehearse('tiny.plan.yaml', '--out', 'one', '--seeds', '4');
     expect(ending).toEqual({
@@ -287,7 +201,7 @@ describe.concurrent('bad input gets one clear line, exit code 2, and nothing is 
     expect(await contents('one', true)).toEqual(before);
   });
 
-  test('a damaged ledger, saying the line', async () => {
+  test('on a damaged ledger, saying the line', async () => {
     await mkdir(at('damaged'));
     for (const [name, text] of Object.entries(await contents('one', true)).filter(
       ([path]) => !path.includes('/'),
@@ -299,34 +213,5 @@ describe.concurrent('bad input gets one clear line, exit code 2, and nothing is 
       code: 2,
       stderr: `${join('damaged', 'ledger.csv')}:2: column "status" holds "dome", which is not what belongs there; remove the line and run the plan again\n`,
     });
-  });
-});
-
-describe('onebatch list', () => {
-  test('shows every task, method and part with its source, settings and defaults', async () => {
-    const { code, stdout, stderr } = await onebatch(root, ['list']);
-    expect([code, stderr]).toEqual([0, '']);
-    for (const title of ['Tasks', 'Methods', 'Surrogates', 'Searches', 'Cautions'])
-      expect(stdout).toMatch(new RegExp(`^${title}`, 'm'));
-    expect(stdout).toMatch(
-      /^ {2}branin\n {6}Branin function.+\n {6}source: Branin 1972.+\n {6}moved = true {2}\(.+\)\n/m,
-    );
-    expect(stdout).toMatch(/^ {2}jitter\n {6}.+\n {6}source: common practice\n {6}parents = 10 {2}\(.+\)\n/m);
-    expect(stdout).toMatch(/^ {6}search\.steps = \d+/m);
-  });
-
-  test('shows one section alone', async () => {
-    const { code, stdout } = await onebatch(root, ['list', 'cautions']);
-    expect(code).toBe(0);
-    expect(stdout).toMatch(/^Cautions/);
-    expect(stdout).toContain('lower-bound');
-    expect(stdout).not.toContain('branin');
-  });
-
-  test('ends quietly when its reader goes away', async () => {
-    const ending = await onebatch(root, ['list'], async ({ stdout }) => {
-      stdout!.destroy();
-    });
-    expect(ending).toMatchObject({ code: 0, stderr: '' });
   });
 });
