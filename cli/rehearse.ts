@@ -25,7 +25,7 @@ const workerFile = new URL('./worker.js', import.meta.url);
 /** Runs a plan, or goes on with it, and ends with its comparison. */
 export async function rehearse(given: RehearseArguments): Promise<ExitCode> {
   const { plan, out, workers } = await readRehearsal(given, catalogue);
-  if (plan.backend !== 'wasm') await useBackend(plan.backend as BackendName);
+  await useBackend(plan.backend as BackendName);
   tryStages(plan);
   await claimFolder(out, provenanceOf(plan));
   if (plan.keep.length > 0) await mkdir(join(out, keepsakeFolder), { recursive: true });

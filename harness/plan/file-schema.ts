@@ -33,7 +33,7 @@ export const planFileSchema = z.strictObject({
   pool: z.int().min(10).max(10_000_000).default(2000),
   batch: z.int().min(1).max(100_000).default(128),
   budgetSeconds: z.number().positive().max(1_000_000).default(300),
-  backend: z.enum(['wasm', 'tfjs-node']).default('wasm'),
+  backend: z.enum(['kernel', 'wasm', 'tfjs-node']).default('kernel'),
   keep: z.array(z.enum(['batches', 'traces'])).default([]),
   tasks: z.array(taskEntry).min(1),
   curtains: z.array(curtainSchema).min(1).default([{}]),

@@ -2,7 +2,8 @@ import { z } from 'zod';
 import type { Stream } from '../../harness/random.js';
 import { type Conservatism, defineSurrogate, type Table } from '../parts.js';
 import { modelOfEnsemble, modelOfNetwork } from './network/ensemble.js';
-import { type NetworkSettings, networkSettings, trainNetwork } from './network/training.js';
+import { type NetworkSettings, networkSettings } from './network/network-settings.js';
+import { trainNetwork } from './network/training.js';
 
 /** One multilayer perceptron. */
 export const networkSurrogate = defineSurrogate({

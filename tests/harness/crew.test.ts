@@ -10,7 +10,7 @@ function job(script: string, budgetSeconds = 30): MethodJob {
   return {
     method: 'scripted',
     settings: { script },
-    backend: 'wasm',
+    backend: 'kernel',
     offer: {
       space: mixedSpace,
       designs: matrixFromRows([

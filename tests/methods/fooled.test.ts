@@ -42,7 +42,7 @@ const plan: Plan = {
   pool: 2000,
   batch: 16,
   budgetSeconds: 60,
-  backend: 'wasm',
+  backend: 'kernel',
   keep: [],
   tasks: [
     {

@@ -1,6 +1,6 @@
 import { type Matrix, zeros } from '../../../harness/designs.js';
 import type { Model, Prediction } from '../../parts.js';
-import type { Network } from './network.js';
+import type { Network } from './trained-network.js';
 
 /** One network as a model: a mean, no idea of its own error. */
 export function modelOfNetwork(network: Network): Model {

@@ -1,8 +1,6 @@
 import * as tf from '@tensorflow/tfjs-core';
+import { leak } from './leak.js';
 import type { Parameters } from './parameters.js';
-
-/** Slope of the hidden units below zero where nothing else is asked for. */
-export const leak = 0.3;
 
 /** A network's parameters as tensors; `dispose` frees them. */
 export class DeviceNetwork {

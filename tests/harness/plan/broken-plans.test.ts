@@ -14,7 +14,7 @@ const plan: Value = {
   pool: 50,
   batch: 5,
   budgetSeconds: 2,
-  backend: 'wasm',
+  backend: 'kernel',
   keep: ['batches'],
   tasks: [
     'slope',

@@ -29,7 +29,7 @@ describe('readPlan reads', () => {
       pool: 2000,
       batch: 128,
       budgetSeconds: 300,
-      backend: 'wasm',
+      backend: 'kernel',
       keep: [],
       tasks: [
         {
@@ -235,7 +235,7 @@ describe('readPlan refuses, naming the line, the key and the nearest word,', () 
     [
       'an unknown backend',
       ['backend: wsm', good.tasks, good.methods],
-      'p.yaml:1: backend: is "wsm", must be one of these; did you mean "wasm"? There is: wasm, tfjs-node',
+      'p.yaml:1: backend: is "wsm", must be one of these; did you mean "wasm"? There is: kernel, wasm, tfjs-node',
     ],
     [
       'an unknown thing to keep',
@@ -265,7 +265,7 @@ describe('readPlan refuses, saying the value seen and what it must be,', () => {
     ['batch: "8"', 'batch: is "8", must be a number'],
     ['budgetSeconds: 0', 'budgetSeconds: is 0, must be more than 0'],
     ['budgetSeconds: 1e9', 'budgetSeconds: is 1000000000, must be at most 1000000'],
-    ['backend: 3', 'backend: is 3, must be one of these; there is: wasm, tfjs-node'],
+    ['backend: 3', 'backend: is 3, must be one of these; there is: kernel, wasm, tfjs-node'],
     ['keep: traces', 'keep: is "traces", must be a list'],
     ['name: a b', 'name: is "a b": use letters, digits and . _ + - ( ) = , only, at most 48 characters'],
     ['name: 5', 'name: is 5, must be a word'],

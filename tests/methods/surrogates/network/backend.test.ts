@@ -8,11 +8,17 @@ import { describeBackend } from '../../../../methods/surrogates/network/backend-
 const nativePackage = '@tensorflow/tfjs-node';
 const installed = canResolve(nativePackage);
 
-afterEach(() => useBackend('wasm'));
+afterEach(() => useBackend('kernel'));
 
 describe('startBackend()', () => {
-  test('starts wasm where nothing else was chosen, on one thread so that sums keep their order', async () => {
-    await startBackend();
+  test('starts the kernel where nothing else was chosen, without tfjs', async () => {
+    expect(await startBackend()).toBe('kernel');
+    expect(tf.findBackend('wasm')).toBeNull();
+  });
+
+  test('starts wasm where it was chosen, on one thread so that sums keep their order', async () => {
+    await useBackend('wasm');
+    expect(await startBackend()).toBe('wasm');
     expect(tf.getBackend()).toBe('wasm');
     const { getThreadsCount } = await import('@tensorflow/tfjs-backend-wasm');
     expect(getThreadsCount()).toBe(1);
@@ -20,7 +26,7 @@ describe('startBackend()', () => {
 });
 
 describe.skipIf(installed)(`useBackend("tfjs-node") where ${nativePackage} is not installed`, () => {
-  test('is refused with the package’s name, and not replaced by wasm behind the user’s back', async () => {
+  test('is refused with the package’s name, and not replaced behind the user’s back', async () => {
     for (const attempt of [() => useBackend('tfjs-node'), startBackend]) {
       const failure = await attempt().catch((error: unknown) => error);
       expect(failure).toBeInstanceOf(OnebatchError);
@@ -34,6 +40,10 @@ describe.skipIf(installed)(`useBackend("tfjs-node") where ${nativePackage} is no
 
 test('describeBackend(name) says tfjs’s version and the backend', () => {
   expect(describeBackend('wasm')).toBe(`tfjs ${tf.version_core} on wasm`);
+});
+
+test('describeBackend("kernel") names the code that runs', () => {
+  expect(describeBackend('kernel')).toMatch(/^kernel [0-9a-f]{12}$/);
 });
 
 function canResolve(name: string): boolean {

@@ -3,7 +3,7 @@ import { describe, expect, test } from 'vitest';
 import { rowView } from '../../../../harness/designs.js';
 import { rootStream } from '../../../../harness/random.js';
 import { modelOfEnsemble, modelOfNetwork } from '../../../../methods/surrogates/network/ensemble.js';
-import type { Network } from '../../../../methods/surrogates/network/network.js';
+import type { Network } from '../../../../methods/surrogates/network/trained-network.js';
 import { expectClose } from './expect-close.js';
 import { centralDifferences } from './plain-network.js';
 import { makeRandomNetwork, relaxedRows } from './random-network.js';

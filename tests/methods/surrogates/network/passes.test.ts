@@ -1,9 +1,10 @@
 import * as tf from '@tensorflow/tfjs-core';
 import fc from 'fast-check';
 import { beforeAll, describe, expect, test } from 'vitest';
-import { startBackend } from '../../../../methods/surrogates/network/backend.js';
+import { useBackend } from '../../../../methods/surrogates/network/backend.js';
+import { leak } from '../../../../methods/surrogates/network/leak.js';
 import { type Parameters, parameterArrays } from '../../../../methods/surrogates/network/parameters.js';
-import { DeviceNetwork, leak } from '../../../../methods/surrogates/network/passes.js';
+import { DeviceNetwork } from '../../../../methods/surrogates/network/passes.js';
 import { expectClose } from './expect-close.js';
 import {
   arbitraryNetwork,
@@ -14,7 +15,7 @@ import {
 } from './plain-network.js';
 import { reference, toParameters } from './reference.js';
 
-beforeAll(startBackend);
+beforeAll(() => useBackend('wasm'));
 
 /** Frees the network even where an expectation fails. */
 function withNetwork<T>(parameters: Parameters, use: (network: DeviceNetwork) => T, slope = leak): T {

@@ -2,9 +2,9 @@ import { matrixFromRows, rowView } from '../../../../harness/designs.js';
 import { projectInPlace } from '../../../../harness/encoding.js';
 import type { Stream } from '../../../../harness/random.js';
 import type { Conservatism, Table } from '../../../../methods/parts.js';
+import type { NetworkSettings } from '../../../../methods/surrogates/network/network-settings.js';
 import { freshParameters, type Parameters } from '../../../../methods/surrogates/network/parameters.js';
 import { makeScaling } from '../../../../methods/surrogates/network/scaling.js';
-import type { NetworkSettings } from '../../../../methods/surrogates/network/training.js';
 import { centralDifferences, differencesByParameters, plainOutput } from './plain-network.js';
 
 /**

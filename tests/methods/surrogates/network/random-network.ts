@@ -2,9 +2,10 @@ import type { Matrix } from '../../../../harness/designs.js';
 import { type Encoding, encode, makeEncoding } from '../../../../harness/encoding.js';
 import { rootStream, type Stream } from '../../../../harness/random.js';
 import { makeSpace, sampleUniform } from '../../../../harness/space.js';
-import { makeNetwork, type Network } from '../../../../methods/surrogates/network/network.js';
+import { makeNetwork } from '../../../../methods/surrogates/network/network.js';
 import { freshParameters } from '../../../../methods/surrogates/network/parameters.js';
 import { makeScaling } from '../../../../methods/surrogates/network/scaling.js';
+import type { Network } from '../../../../methods/surrogates/network/trained-network.js';
 import { plainOutput } from './plain-network.js';
 
 /** Columns of all kinds, 7 features. */

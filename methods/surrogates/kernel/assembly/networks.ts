@@ -1,0 +1,74 @@
+import { fours, hiddenLayers, layerBytes, parameterBytes, transposedOffset, widthOf } from './shape';
+import { transposeWeights } from './transpose';
+import { workspaceBytes } from './workspace';
+
+/** The shape of the networks in use. */
+export let shape: usize = 0;
+
+/** How many networks of this shape; their parameters lie one after another. */
+export let members: i32 = 0;
+
+/** Slope of the hidden units below zero. */
+export let slope: f32 = 0;
+
+/** Scratch memory of the passes. */
+export let work: usize = 0;
+
+/** The most rows that the scratch memory holds at once. */
+export let mostRows: i32 = 0;
+
+/** Outputs of all members, f32, `mostRows` each. */
+export let memberOutputs: usize = 0;
+
+/** Gradients by inputs of all members, panel-wise f32. */
+export let memberGradients: usize = 0;
+
+let parameters: usize = 0;
+let transposed: usize = 0;
+
+/** Bytes of scratch memory that `useNetworks` needs. */
+export function scratchBytes(shapeAt: usize, count: i32, rows: i32): usize {
+  const each =
+    transposedOffset(shapeAt, hiddenLayers(shapeAt) + 1) +
+    ((<usize>fours(rows)) << 2) +
+    layerBytes(fours(rows), widthOf(shapeAt, 0));
+  return <usize>count * each + workspaceBytes(shapeAt, fours(rows));
+}
+
+/** Says which networks all further calls are about. */
+export function useNetworks(
+  shapeAt: usize,
+  parametersAt: usize,
+  count: i32,
+  slopeBelow: f32,
+  rows: i32,
+  scratch: usize,
+): void {
+  shape = shapeAt;
+  parameters = parametersAt;
+  members = count;
+  slope = slopeBelow;
+  mostRows = fours(rows);
+  transposed = scratch;
+  memberOutputs = transposed + <usize>count * transposedOffset(shape, hiddenLayers(shape) + 1);
+  memberGradients = memberOutputs + <usize>count * ((<usize>mostRows) << 2);
+  work = memberGradients + <usize>count * gradientBytes(mostRows);
+}
+
+export function parametersOf(member: i32): usize {
+  return parameters + <usize>member * parameterBytes(shape);
+}
+
+export function transposedOf(member: i32): usize {
+  return transposed + <usize>member * transposedOffset(shape, hiddenLayers(shape) + 1);
+}
+
+/** Bytes of one member's gradients by inputs. */
+export function gradientBytes(rows: i32): usize {
+  return layerBytes(rows, widthOf(shape, 0));
+}
+
+/** Brings the transposed weights up to date: of all layers, or without the first where inputs need no gradient. */
+export function transposeMembers(first: i32): void {
+  for (let m = 0; m < members; m++) transposeWeights(shape, parametersOf(m), transposedOf(m), first);
+}

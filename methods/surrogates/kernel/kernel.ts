@@ -1,0 +1,29 @@
+import { Arena } from './arena.js';
+import type { KernelExports } from './exports.js';
+import { readKernelFile } from './kernel-file.js';
+
+/** The compiled kernel with memory to work in. */
+export interface Kernel {
+  readonly call: KernelExports;
+  readonly arena: Arena;
+}
+
+let loaded: Kernel | undefined;
+
+/**
+ * The thread's one kernel, with all of its memory free: whoever takes it puts in what it needs, calls, copies results
+ * out and is done before anyone else takes it. So memory stays at what the largest single use needs.
+ *
+ * @throws OnebatchError (`bad-input`) when the kernel was not built.
+ */
+export function takeKernel(): Kernel {
+  loaded ??= load();
+  loaded.arena.reset();
+  return loaded;
+}
+
+function load(): Kernel {
+  const instance = new WebAssembly.Instance(new WebAssembly.Module(readKernelFile()));
+  const call = instance.exports as unknown as KernelExports;
+  return { call, arena: new Arena(call.memory, call.firstAddress()) };
+}
