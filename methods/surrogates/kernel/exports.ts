@@ -46,11 +46,12 @@ export interface KernelExports {
     target: number,
     scratch: number,
   ): void;
+  tableBytes(x: number, rows: number): number;
   beginTraining(
     x: number,
     rows: number,
     targets: number,
-    scaled: number,
+    prepared: number,
     moments: number,
     learningRate: number,
     weightDecay: number,

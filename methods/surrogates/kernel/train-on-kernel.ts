@@ -33,11 +33,12 @@ export function trainOnKernel(
   const mostRows = Math.min(settings.batch, x.rows);
   useNetworks(kernel, shape, panels, { rows: mostRows + Math.min(mostRows, conservatism?.rows ?? 0) });
   beConservative(kernel, encoding, conservatism);
+  const rows = arena.place(x.values);
   call.beginTraining(
-    arena.place(x.values),
+    rows,
     x.rows,
     arena.place(targets),
-    arena.reserve(4 * x.rows * 8 * Math.ceil(encoding.width / 8)),
+    arena.reserve(call.tableBytes(rows, x.rows)),
     arena.reserve(3 * bytes),
     settings.learningRate,
     settings.weightDecay,

@@ -27,9 +27,7 @@ export function ascend(
     let record = trace + <usize>start * rowBytes;
     for (let step = 1; step <= steps; step++) {
       boundGradient(from, some, gradient, spreadWeight, 1);
-      for (let at: usize = 0; at < bytes; at += 8) {
-        store<f64>(from + at, load<f64>(from + at) + rate * load<f64>(gradient + at));
-      }
+      stepAlong(from, gradient, bytes, rate);
       project(from, some);
       if (traceEvery && (step % traceEvery == 0 || step == steps)) {
         memory.copy(record, from, bytes);
@@ -37,4 +35,14 @@ export function ascend(
       }
     }
   }
+}
+
+/** x ← x + rate · gradient. */
+function stepAlong(x: usize, gradient: usize, bytes: usize, rate: f64): void {
+  const rates = f64x2.splat(rate);
+  const pairs = bytes & ~15;
+  for (let at: usize = 0; at < pairs; at += 16) {
+    v128.store(x + at, f64x2.add(v128.load(x + at), f64x2.mul(rates, v128.load(gradient + at))));
+  }
+  if (bytes > pairs) store<f64>(x + pairs, load<f64>(x + pairs) + rate * load<f64>(gradient + pairs));
 }

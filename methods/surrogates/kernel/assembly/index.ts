@@ -2,6 +2,7 @@ export { adamStep, beginAdam } from './adam';
 export { ascend } from './ascent';
 export { useConservatism } from './conservatism';
 export { gradients } from './input-gradient';
+export { tableBytes } from './inputs';
 export { scratchBytes, transposeMembers, useNetworks } from './networks';
 export { arrangeParameters } from './parameters';
 export { predict } from './predict';

@@ -1,8 +1,9 @@
-import { clearInputs, enterRows, placeOf } from './inputs';
+import { clearInputs, enterRows } from './inputs';
 import {
   gradientBytes,
   memberGradients,
   memberOutputs,
+  memberShares,
   members,
   mostRows,
   parametersOf,
@@ -12,8 +13,8 @@ import {
   work,
 } from './networks';
 import { backward, forward } from './passes';
-import { fours } from './shape';
-import { factors, features } from './space';
+import { fours, panelBytes } from './shape';
+import { factorOf, factors, features } from './space';
 import { derivativesAt, outputDerivativesAt, outputsAt } from './workspace';
 
 /**
@@ -34,20 +35,45 @@ export function boundGradient(x: usize, count: i32, gradient: usize, spreadWeigh
     memory.copy(outputOf(m, 0), outputsAt(shape, work, rows), (<usize>rows) << 2);
     memory.copy(gradientOf(m), derivativesAt(shape, work, rows, 0), gradientBytes(rows));
   }
-  memory.fill(gradient, 0, (<usize>count * <usize>features) << 3);
   for (let i = 0; i < count; i++) {
-    const row = gradient + ((<usize>i * <usize>features) << 3);
-    const mean = meanOutput(i);
-    const spread = members > 1 ? spreadOfOutputs(i, mean) : 0;
+    shareOut(i, spreadWeight);
+    combine(i, rows, gradient + ((<usize>i * <usize>features) << 3), scale);
+  }
+}
+
+/** Each member's share in the gradient of a row: 1/M − w · (output − mean) / ((M − 1) · spread). */
+function shareOut(row: i32, spreadWeight: f64): void {
+  const mean = meanOutput(row);
+  const spread = members > 1 ? spreadOfOutputs(row, mean) : 0;
+  for (let m = 0; m < members; m++) {
+    const off = <f64>load<f32>(outputOf(m, row)) - mean;
+    const doubt = spread > 0 ? off / (<f64>(members - 1) * spread) : 0;
+    store<f64>(memberShares + ((<usize>m) << 3), 1.0 / <f64>members - spreadWeight * doubt);
+  }
+}
+
+/** Adds up the members' gradients of a row by their shares, by encoded features instead of inputs. */
+function combine(row: i32, rows: i32, to: usize, scale: f64): void {
+  const scales = f64x2.splat(scale);
+  const pairs = features >> 1;
+  let place = (<usize>row) << 5;
+  for (let k = 0; k < pairs; k++) {
+    let sum = f64x2.splat(0);
     for (let m = 0; m < members; m++) {
-      const doubt = spread > 0 ? (<f64>load<f32>(outputOf(m, i)) - mean) / (<f64>(members - 1) * spread) : 0;
-      const share = 1.0 / <f64>members - spreadWeight * doubt;
-      for (let j = 0; j < features; j++) {
-        const at = row + ((<usize>j) << 3);
-        const slopeAt = <f64>load<f32>(gradientOf(m) + placeOf(i, j, rows));
-        store<f64>(at, load<f64>(at) + share * slopeAt * load<f64>(factors + ((<usize>j) << 3)) * scale);
-      }
+      const share = v128.load_splat<f64>(memberShares + ((<usize>m) << 3));
+      const slopes = f64x2.promote_low_f32x4(v128.load_zero<f64>(gradientOf(m) + place));
+      sum = f64x2.add(sum, f64x2.mul(share, slopes));
     }
+    const offset = (<usize>k) << 4;
+    v128.store(to + offset, f64x2.mul(f64x2.mul(sum, v128.load(factors + offset)), scales));
+    place += (k & 3) == 3 ? panelBytes(rows) - 24 : 8;
+  }
+  if (features & 1) {
+    let sum: f64 = 0;
+    for (let m = 0; m < members; m++) {
+      sum += load<f64>(memberShares + ((<usize>m) << 3)) * <f64>load<f32>(gradientOf(m) + place);
+    }
+    store<f64>(to + ((<usize>(features - 1)) << 3), sum * factorOf(features - 1) * scale);
   }
 }
 

@@ -1,4 +1,6 @@
+import { entryBytes } from './lists';
 import { fours, hiddenLayers, layerBytes, parameterBytes, transposedOffset, widthOf } from './shape';
+import { features, listing } from './space';
 import { transposeWeights } from './transpose';
 import { workspaceBytes } from './workspace';
 
@@ -20,6 +22,17 @@ export let mostRows: i32 = 0;
 /** Outputs of all members, f32, `mostRows` each. */
 export let memberOutputs: usize = 0;
 
+/** Share of each member in the gradient of a row, f64. */
+export let memberShares: usize = 0;
+
+/** Heads of the rows in the workspace where rows are lists, and room for lists of their own. */
+export let heads: usize = 0;
+
+export let lists: usize = 0;
+
+/** Room for the first layer's biases as listed rows need them. */
+export let firstBiases: usize = 0;
+
 /** Gradients by inputs of all members, panel-wise f32. */
 export let memberGradients: usize = 0;
 
@@ -28,11 +41,7 @@ let transposed: usize = 0;
 
 /** Bytes of scratch memory that `useNetworks` needs. */
 export function scratchBytes(shapeAt: usize, count: i32, rows: i32): usize {
-  const each =
-    transposedOffset(shapeAt, hiddenLayers(shapeAt) + 1) +
-    ((<usize>fours(rows)) << 2) +
-    layerBytes(fours(rows), widthOf(shapeAt, 0));
-  return <usize>count * each + workspaceBytes(shapeAt, fours(rows));
+  return layOut(shapeAt, count, fours(rows), 0);
 }
 
 /** Says which networks all further calls are about. */
@@ -49,10 +58,21 @@ export function useNetworks(
   members = count;
   slope = slopeBelow;
   mostRows = fours(rows);
+  layOut(shape, count, mostRows, scratch);
+}
+
+/** Puts all scratch memory one after another and returns where it ends; all parts are multiples of 16 bytes. */
+function layOut(shapeAt: usize, count: i32, rows: i32, scratch: usize): usize {
+  const each = <usize>count;
   transposed = scratch;
-  memberOutputs = transposed + <usize>count * transposedOffset(shape, hiddenLayers(shape) + 1);
-  memberGradients = memberOutputs + <usize>count * ((<usize>mostRows) << 2);
-  work = memberGradients + <usize>count * gradientBytes(mostRows);
+  memberOutputs = transposed + each * transposedOffset(shapeAt, hiddenLayers(shapeAt) + 1);
+  memberGradients = memberOutputs + each * ((<usize>rows) << 2);
+  memberShares = memberGradients + each * layerBytes(rows, widthOf(shapeAt, 0));
+  firstBiases = memberShares + (((each + 1) & ~1) << 3);
+  heads = firstBiases + layerBytes(1, widthOf(shapeAt, 1));
+  lists = heads + (listing ? <usize>rows * entryBytes : 0);
+  work = lists + (listing ? <usize>rows * <usize>features * entryBytes : 0);
+  return work + workspaceBytes(shapeAt, rows);
 }
 
 export function parametersOf(member: i32): usize {

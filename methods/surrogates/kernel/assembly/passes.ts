@@ -1,6 +1,9 @@
+import { listedForward, listedGradient, shiftedBiases } from './listed-layer';
+import { firstBiases, heads } from './networks';
 import { outputUnit, throughOutputUnit } from './output-unit';
 import { asIs, asUnits, multiply, multiplyTransposed, sumRows, throughUnits } from './products';
 import { biasesOffset, eights, hiddenLayers, transposedOffset, weightsOffset, widthOf } from './shape';
+import { listing } from './space';
 import { activationsAt, derivativesAt, outputDerivativesAt, outputsAt } from './workspace';
 
 /** From the inputs in the workspace to activations and outputs. */
@@ -8,18 +11,17 @@ export function forward(shape: usize, parameters: usize, work: usize, rows: i32,
   const last = hiddenLayers(shape);
   for (let layer = 1; layer <= last; layer++) {
     const inputs = widthOf(shape, layer - 1);
-    multiply(
-      activationsAt(shape, work, rows, layer - 1),
-      parameters + weightsOffset(shape, layer),
-      activationsAt(shape, work, rows, layer),
-      rows,
-      inputs,
-      eights(inputs),
-      eights(widthOf(shape, layer)) >> 3,
-      asUnits,
-      parameters + biasesOffset(shape, layer),
-      slope,
-    );
+    const panels = eights(widthOf(shape, layer)) >> 3;
+    const weights = parameters + weightsOffset(shape, layer);
+    const biases = parameters + biasesOffset(shape, layer);
+    const to = activationsAt(shape, work, rows, layer);
+    if (layer == 1 && listing) {
+      shiftedBiases(biases, weights, firstBiases, eights(inputs), panels);
+      listedForward(heads, firstBiases, weights, to, rows, eights(inputs), panels, slope);
+    } else {
+      const from = activationsAt(shape, work, rows, layer - 1);
+      multiply(from, weights, to, rows, inputs, eights(inputs), panels, asUnits, biases, slope);
+    }
   }
   outputUnit(
     activationsAt(shape, work, rows, last),
@@ -72,8 +74,13 @@ export function backward(
     const derivatives = derivativesAt(shape, work, rows, layer);
     if (gradient) {
       const weights = gradient + weightsOffset(shape, layer);
-      multiplyTransposed(before, derivatives, weights, rows, count, inputs, eights(inputs), panels);
-      sumRows(derivatives, gradient + biasesOffset(shape, layer), rows, count, panels);
+      const biases = gradient + biasesOffset(shape, layer);
+      sumRows(derivatives, biases, rows, count, panels);
+      if (layer == 1 && listing) {
+        listedGradient(heads, derivatives, biases, weights, rows, count, eights(inputs), panels);
+      } else {
+        multiplyTransposed(before, derivatives, weights, rows, count, inputs, eights(inputs), panels);
+      }
     }
     if (layer > 1 || toInputs) {
       multiply(

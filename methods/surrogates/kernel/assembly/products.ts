@@ -178,7 +178,7 @@ export function sumRows(b: usize, c: usize, rows: i32, count: i32, panels: i32):
 }
 
 /** Leaky rectified units: z above zero, slope · z below, for a slope of at most 1. */
-function leaky(z: v128, slopes: v128): v128 {
+export function leaky(z: v128, slopes: v128): v128 {
   return f32x4.pmax(z, f32x4.mul(z, slopes));
 }
 

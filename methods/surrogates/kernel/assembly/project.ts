@@ -1,4 +1,4 @@
-import { blockCount, blocks, features } from './space';
+import { blockCount, featureCount, features, firstFeature, isCategory } from './space';
 
 /**
  * Moves encoded rows (f64) to the nearest point of the relaxed space, in place: scaled columns into [0, 1], the
@@ -8,9 +8,8 @@ export function project(x: usize, count: i32): void {
   for (let i = 0; i < count; i++) {
     const row = x + ((<usize>i * <usize>features) << 3);
     for (let b = 0; b < blockCount; b++) {
-      const block = blocks + <usize>b * 12;
-      const at = row + ((<usize>load<i32>(block, 4)) << 3);
-      if (load<i32>(block)) projectOntoSimplex(at, at + ((<usize>load<i32>(block, 8)) << 3));
+      const at = row + ((<usize>firstFeature(b)) << 3);
+      if (isCategory(b)) projectOntoSimplex(at, at + ((<usize>featureCount(b)) << 3));
       else store<f64>(at, min<f64>(1, max<f64>(0, load<f64>(at))));
     }
   }

@@ -1,13 +1,13 @@
 import { adamStep, beginAdam } from './adam';
 import { addPenalty, mine, minedRows } from './conservatism';
-import { clearInputs, enterRows, enterScaledRows, scaleRows } from './inputs';
+import { clearInputs, enterRows, enterTableRows, prepareTable } from './inputs';
 import { parametersOf, shape, slope, transposedOf, transposeMembers, work } from './networks';
 import { backward, forward } from './passes';
 import { fours, parameterBytes } from './shape';
 import { outputDerivativesAt, outputsAt } from './workspace';
 
 let x: usize = 0;
-let scaledRows: usize = 0;
+let table: usize = 0;
 let targets: usize = 0;
 let learningRate: f64 = 0;
 let weightDecay: f64 = 0;
@@ -17,20 +17,20 @@ let gradient: usize = 0;
 
 /**
  * Begins the training of one network on a table of `count` encoded rows (f64, row-major) and their standardized scores
- * (f64). `scaled` has room for as many rows of f32, `moments` for three times the network's parameters.
+ * (f64). `prepared` has room for `tableBytes`, `moments` for three times the network's parameters.
  */
 export function beginTraining(
   rows: usize,
   count: i32,
   scores: usize,
-  scaled: usize,
+  prepared: usize,
   moments: usize,
   rate: f64,
   decay: f64,
 ): void {
   const bytes = parameterBytes(shape);
   x = rows;
-  scaledRows = scaled;
+  table = prepared;
   targets = scores;
   learningRate = rate;
   weightDecay = decay;
@@ -38,7 +38,7 @@ export function beginTraining(
   squares = means + bytes;
   gradient = squares + bytes;
   memory.fill(moments, 0, 3 * bytes);
-  scaleRows(rows, count, scaled);
+  prepareTable(rows, count, table);
   beginAdam();
 }
 
@@ -62,7 +62,7 @@ export function lossGradient(order: usize, size: i32): f64 {
   transposeMembers(count > 0 ? 1 : 2);
   const mined = count > 0 ? mine(x, order, count) : 0;
   clearInputs(rows);
-  enterScaledRows(scaledRows, order, size, rows);
+  enterTableRows(table, order, size, rows);
   if (count > 0) enterRows(mined, count, rows, size);
   forward(shape, parametersOf(0), work, rows, slope);
   const loss = lossDerivatives(order, size, rows);

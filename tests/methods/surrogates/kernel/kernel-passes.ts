@@ -89,18 +89,18 @@ export function kernelTraining(
 
 function begin(
   { kernel: { call, arena }, shape, x }: Placed,
-  { rows, n }: Passes,
+  { n }: Passes,
   targets: ArrayLike<number>,
   { learningRate, weightDecay }: { readonly learningRate: number; readonly weightDecay: number },
 ): number {
-  const scaled = arena.reserve(4 * n * 8 * Math.ceil(rows.length / n / 8));
+  const prepared = arena.reserve(call.tableBytes(x, n));
   const moments = arena.reserve(3 * call.parameterBytes(shape));
   call.useConservatism(0, 0, 0, 0, 0, 0, 0);
   call.beginTraining(
     x,
     n,
     arena.place(Float64Array.from(targets)),
-    scaled,
+    prepared,
     moments,
     learningRate,
     weightDecay,
