@@ -1,9 +1,9 @@
 import { z } from 'zod';
 import type { Stream } from '../../harness/random.js';
-import { type Conservatism, defineSurrogate, type Table } from '../parts.js';
-import { modelOfEnsemble, modelOfNetwork } from './network/ensemble.js';
-import { type NetworkSettings, networkSettings } from './network/network-settings.js';
-import { trainNetwork } from './network/training.js';
+import { defineSurrogate } from '../parts.js';
+import { modelOfNetwork } from './network/ensemble.js';
+import { networkSettings } from './network/network-settings.js';
+import { trainEnsemble, trainNetwork } from './network/training.js';
 
 /** One multilayer perceptron. */
 export const networkSurrogate = defineSurrogate({
@@ -28,22 +28,13 @@ export const networkEnsembleSurrogate = defineSurrogate({
     members: z.int().min(2).max(50).default(5).describe('networks in the ensemble'),
   }),
   async fit(table, settings, stream) {
-    return modelOfEnsemble(await trainMembers(table, settings, stream));
+    return trainEnsemble(table, settings, memberStreams(settings.members, stream));
   },
   async fitConservatively(table, settings, conservatism, stream) {
-    return modelOfEnsemble(await trainMembers(table, settings, stream, conservatism));
+    return trainEnsemble(table, settings, memberStreams(settings.members, stream), conservatism);
   },
 });
 
-async function trainMembers(
-  table: Table,
-  settings: NetworkSettings & { members: number },
-  stream: Stream,
-  conservatism?: Conservatism,
-) {
-  const networks = [];
-  for (let member = 0; member < settings.members; member++) {
-    networks.push(await trainNetwork(table, settings, stream.split('member', member), conservatism));
-  }
-  return networks;
+function memberStreams(members: number, stream: Stream): Stream[] {
+  return Array.from({ length: members }, (_, member) => stream.split('member', member));
 }

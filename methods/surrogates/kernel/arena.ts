@@ -38,11 +38,13 @@ export class Arena {
   /** Copies numbers in and returns their address. */
   place(values: Float64Array | Float32Array | Int32Array): number {
     const at = this.reserve(values.byteLength);
-    new Uint8Array(this.#memory.buffer).set(
-      new Uint8Array(values.buffer, values.byteOffset, values.byteLength),
-      at,
-    );
+    this.write(at, values);
     return at;
+  }
+
+  /** Copies numbers to a place that was reserved for them. */
+  write(at: number, { buffer, byteOffset, byteLength }: Float64Array | Float32Array | Int32Array): void {
+    new Uint8Array(this.#memory.buffer).set(new Uint8Array(buffer, byteOffset, byteLength), at);
   }
 
   /** A copy of `count` 32-bit floats. */

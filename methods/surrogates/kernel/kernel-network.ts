@@ -1,10 +1,9 @@
-import type { Matrix } from '../../../harness/designs.js';
 import type { Encoding } from '../../../harness/encoding.js';
 import type { Parameters } from '../network/parameters.js';
 import type { Network, OutputScaling } from '../network/trained-network.js';
-import { type Kernel, takeKernel } from './kernel.js';
+import { AskedNetworks } from './asked-networks.js';
+import { takeKernel } from './kernel.js';
 import { arrange, type KernelParameters, shapeOf } from './kernel-parameters.js';
-import { placeShape, useEncoding, useNetworks } from './network-shape.js';
 
 /** A network of given parameters whose arithmetic is the kernel's. */
 export function kernelNetworkOf(encoding: Encoding, parameters: Parameters, scaling: OutputScaling): Network {
@@ -20,38 +19,12 @@ export function kernelNetwork(
   parameters: KernelParameters,
   scaling: OutputScaling,
 ): Network {
-  const prepare = (): Kernel => {
-    const kernel = takeKernel();
-    useEncoding(kernel, encoding);
-    const shape = placeShape(kernel, parameters.shape);
-    useNetworks(kernel, shape, kernel.arena.place(parameters.panels), {});
-    return kernel;
-  };
+  const asked = new AskedNetworks(encoding, [parameters], scaling);
   return {
-    predict: (x) => {
-      const { call, arena } = prepare();
-      const outputs = arena.reserve(4 * x.rows);
-      call.predict(arena.place(x.values), x.rows, outputs);
-      return toScores(arena.floats(outputs, x.rows), scaling);
-    },
+    predict: (x) => asked.scores(x)[0]!,
     predictWithGradient: (x) => {
-      const { call, arena } = prepare();
-      call.transposeMembers(1);
-      const outputs = arena.reserve(4 * x.rows);
-      const gradient = arena.reserve(8 * x.values.length);
-      call.gradients(arena.place(x.values), x.rows, outputs, gradient, 0, scaling.deviation);
-      return {
-        scores: toScores(arena.floats(outputs, x.rows), scaling),
-        gradient: likeRows(x, arena.doubles(gradient, x.values.length)),
-      };
+      const { scores, gradient } = asked.gradient(x, 0);
+      return { scores: scores[0]!, gradient };
     },
   };
-}
-
-function toScores(outputs: Float32Array, { mean, deviation }: OutputScaling): Float64Array {
-  return Float64Array.from(outputs, (output) => mean + deviation * output);
-}
-
-function likeRows({ rows, columns }: Matrix, values: Float64Array): Matrix {
-  return { rows, columns, values };
 }

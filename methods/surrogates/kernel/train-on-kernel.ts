@@ -1,14 +1,15 @@
 import type { Encoding } from '../../../harness/encoding.js';
 import type { Stream } from '../../../harness/random.js';
-import type { Conservatism, Table } from '../../parts.js';
+import type { Conservatism, Model, Table } from '../../parts.js';
 import { batchesOf } from '../network/batches.js';
 import type { NetworkSettings } from '../network/network-settings.js';
 import { freshParameters } from '../network/parameters.js';
 import { standardize } from '../network/standardize.js';
-import type { Network } from '../network/trained-network.js';
+import type { Network, OutputScaling } from '../network/trained-network.js';
 import { type Kernel, takeKernel } from './kernel.js';
+import { kernelEnsemble } from './kernel-ensemble.js';
 import { kernelNetwork } from './kernel-network.js';
-import { arrange, shapeOf } from './kernel-parameters.js';
+import { arrange, type KernelParameters, shapeOf } from './kernel-parameters.js';
 import { useEncoding, useNetworks } from './network-shape.js';
 
 /** Row numbers handed to the kernel in one call, at most: many epochs of a small table. */
@@ -21,8 +22,33 @@ export function trainOnKernel(
   stream: Stream,
   conservatism: Conservatism | undefined,
 ): Network {
+  const { parameters, scaling } = trainParameters(table, settings, stream, conservatism);
+  return kernelNetwork(table.encoding, parameters, scaling);
+}
+
+/** Trains one network for each stream, and has them asked together. */
+export function trainEnsembleOnKernel(
+  table: Table,
+  settings: NetworkSettings,
+  streams: readonly Stream[],
+  conservatism: Conservatism | undefined,
+): Model {
+  const members = streams.map((stream) => trainParameters(table, settings, stream, conservatism));
+  return kernelEnsemble(
+    table.encoding,
+    members.map(({ parameters }) => parameters),
+    members[0]!.scaling,
+  );
+}
+
+function trainParameters(
+  table: Table,
+  settings: NetworkSettings,
+  stream: Stream,
+  conservatism: Conservatism | undefined,
+): { parameters: KernelParameters; scaling: OutputScaling } {
   const { encoding, x } = table;
-  const { targets, scale } = standardize(table.scores);
+  const { targets, scale: scaling } = standardize(table.scores);
   const widths = Array.from({ length: settings.layers }, () => settings.width);
   const parameters = freshParameters(encoding.width, widths, stream.split('parameters'));
   const kernel = takeKernel();
@@ -44,8 +70,7 @@ export function trainOnKernel(
     settings.weightDecay,
   );
   trainInCalls(kernel, batchesOf(x.rows, settings, stream.split('batches')), mostRows);
-  const trained = { shape: shapeOf(parameters), panels: arena.floats(panels, bytes / 4) };
-  return kernelNetwork(encoding, trained, scale);
+  return { parameters: { shape: shapeOf(parameters), panels: arena.floats(panels, bytes / 4) }, scaling };
 }
 
 function beConservative(

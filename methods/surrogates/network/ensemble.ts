@@ -1,5 +1,6 @@
 import { type Matrix, zeros } from '../../../harness/designs.js';
-import type { Model, Prediction } from '../../parts.js';
+import type { Model } from '../../parts.js';
+import { meanAndSpread } from './mean-and-spread.js';
 import type { Network } from './trained-network.js';
 
 /** One network as a model: a mean, no idea of its own error. */
@@ -13,27 +14,9 @@ export function modelOfNetwork(network: Network): Model {
 /** Several networks as a model: their mean, and their standard deviation (n − 1) as the spread. */
 export function modelOfEnsemble(networks: readonly Network[]): Model {
   return {
-    predict: (x) => summarize(networks.map((network) => network.predict(x))),
+    predict: (x) => meanAndSpread(networks.map((network) => network.predict(x))),
     gradient: (x, spreadWeight) => gradientOfBound(networks, x, spreadWeight),
   };
-}
-
-function summarize(predictions: readonly Float64Array[]): Required<Prediction> {
-  const members = predictions.length;
-  const rows = predictions[0]!.length;
-  const mean = new Float64Array(rows);
-  const spread = new Float64Array(rows);
-  for (let i = 0; i < rows; i++) {
-    // Summed as differences to the first member, so that members that agree have no spread from rounding.
-    const first = predictions[0]![i]!;
-    let sum = 0;
-    for (const member of predictions) sum += member[i]! - first;
-    mean[i] = first + sum / members;
-    let squares = 0;
-    for (const member of predictions) squares += (member[i]! - mean[i]!) ** 2;
-    spread[i] = Math.sqrt(squares / (members - 1));
-  }
-  return { mean, spread };
 }
 
 /**
@@ -42,7 +25,7 @@ function summarize(predictions: readonly Float64Array[]): Required<Prediction> {
  */
 function gradientOfBound(networks: readonly Network[], x: Matrix, spreadWeight: number): Matrix {
   const members = networks.map((network) => network.predictWithGradient(x));
-  const { mean, spread } = summarize(members.map((member) => member.scores));
+  const { mean, spread } = meanAndSpread(members.map((member) => member.scores));
   const gradient = zeros(x.rows, x.columns);
   for (const { scores, gradient: slope } of members) {
     for (let i = 0; i < x.rows; i++) {

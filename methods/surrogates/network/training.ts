@@ -1,7 +1,8 @@
 import type { Stream } from '../../../harness/random.js';
-import type { Conservatism, Table } from '../../parts.js';
-import { trainOnKernel } from '../kernel/train-on-kernel.js';
+import type { Conservatism, Model, Table } from '../../parts.js';
+import { trainEnsembleOnKernel, trainOnKernel } from '../kernel/train-on-kernel.js';
 import { startBackend } from './backend.js';
+import { modelOfEnsemble } from './ensemble.js';
 import type { NetworkSettings } from './network-settings.js';
 import type { Network } from './trained-network.js';
 
@@ -23,4 +24,18 @@ export async function trainNetwork(
   if (backend === 'kernel') return trainOnKernel(table, settings, stream, conservatism);
   const { trainOnTfjs } = await import('./tfjs-training.js');
   return trainOnTfjs(table, settings, stream, conservatism);
+}
+
+/** Trains one network for each stream, as `trainNetwork` does, and makes one model of them. */
+export async function trainEnsemble(
+  table: Table,
+  settings: NetworkSettings,
+  streams: readonly Stream[],
+  conservatism?: Conservatism,
+): Promise<Model> {
+  const backend = await startBackend();
+  if (backend === 'kernel') return trainEnsembleOnKernel(table, settings, streams, conservatism);
+  const networks = [];
+  for (const stream of streams) networks.push(await trainNetwork(table, settings, stream, conservatism));
+  return modelOfEnsemble(networks);
 }
