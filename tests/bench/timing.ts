@@ -10,8 +10,14 @@ export async function medianMilliseconds(runs: number, work: () => unknown): Pro
   return times.sort((a, b) => a - b)[Math.floor(runs / 2)]!;
 }
 
-/** A line of the report: what was timed, the figure, and its ratio to the first of its group. */
-export function report(what: string, figure: number, unit: string, ratio?: number): void {
-  const compared = ratio === undefined ? '' : `   ${ratio.toFixed(2)} x the first`;
+/** A line of the report: what was timed, the figure, and a ratio, if not said otherwise to the first of its group. */
+export function report(
+  what: string,
+  figure: number,
+  unit: string,
+  ratio?: number,
+  ratioUnit = 'x the first',
+): void {
+  const compared = ratio === undefined ? '' : `   ${ratio.toFixed(2)} ${ratioUnit}`;
   process.stdout.write(`${what.padEnd(52)} ${figure.toPrecision(3).padStart(8)} ${unit}${compared}\n`);
 }

@@ -24,9 +24,9 @@ export function enterRows(x: usize, count: i32, rows: i32, first: i32): void {
 }
 
 /** Bytes that `prepareTable` needs for `count` encoded rows. */
-export function tableBytes(x: usize, count: i32): usize {
-  if (!listing) return <usize>count * matrixBytes(1, features);
-  return <usize>(count + countEntries(x, count, (<usize>features) << 3)) * entryBytes;
+export function tableBytes(x: usize, count: i32): f64 {
+  if (!listing) return <f64>count * <f64>matrixBytes(1, features);
+  return <f64>(count + countEntries(x, count, (<usize>features) << 3)) * <f64>entryBytes;
 }
 
 /** Scales encoded rows (f64, row-major) once, for `enterTableRows`. */

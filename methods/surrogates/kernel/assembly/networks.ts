@@ -36,12 +36,21 @@ export let firstBiases: usize = 0;
 /** Gradients by inputs of all members, panel-wise f32. */
 export let memberGradients: usize = 0;
 
+/** Half of all addresses: beyond it, sizes are only estimated, and the caller gives up. */
+const addressable: f64 = 2147483648;
+
 let parameters: usize = 0;
 let transposed: usize = 0;
 
-/** Bytes of scratch memory that `useNetworks` needs. */
-export function scratchBytes(shapeAt: usize, count: i32, rows: i32): usize {
-  return layOut(shapeAt, count, fours(rows), 0);
+/** Bytes of scratch memory that `useNetworks` needs; also right where they are more than there can be. */
+export function scratchBytes(shapeAt: usize, count: i32, rows: i32): f64 {
+  const members = <f64>count;
+  const inputs = <f64>widthOf(shapeAt, 0);
+  let units = inputs;
+  for (let l = 1; l <= hiddenLayers(shapeAt); l++) units += <f64>widthOf(shapeAt, l);
+  const ofMember = <f64>transposedOffset(shapeAt, hiddenLayers(shapeAt) + 1) + 4 * inputs * <f64>rows;
+  const rough = members * ofMember + 8 * (units + inputs) * <f64>rows;
+  return rough < addressable ? <f64>layOut(shapeAt, count, fours(rows), 0) : rough;
 }
 
 /** Says which networks all further calls are about. */

@@ -1,5 +1,10 @@
 import { type Kernel, takeKernel } from '../../../../methods/surrogates/kernel/kernel.js';
-import { arrange, readParameters, shapeOf } from '../../../../methods/surrogates/kernel/kernel-parameters.js';
+import {
+  arrange,
+  type KernelParameters,
+  readParameters,
+  shapeOf,
+} from '../../../../methods/surrogates/kernel/kernel-parameters.js';
 import { useNetworks } from '../../../../methods/surrogates/kernel/network-shape.js';
 import { leak } from '../../../../methods/surrogates/network/leak.js';
 import type { Parameters } from '../../../../methods/surrogates/network/parameters.js';
@@ -106,4 +111,12 @@ function begin(
     weightDecay,
   );
   return moments;
+}
+
+/** Parameters in the kernel's order, as a trained network keeps them. */
+export function keptParameters(parameters: Parameters): KernelParameters {
+  const kernel = takeKernel();
+  const { shape, panels } = arrange(kernel, parameters);
+  const count = kernel.call.parameterBytes(shape) / 4;
+  return { shape: shapeOf(parameters), panels: kernel.arena.floats(panels, count) };
 }
