@@ -20,7 +20,12 @@ export interface PlannedMethod {
   readonly label: string;
   readonly method: MethodReference;
   readonly settings: Settings;
+  /** The label that tables give to the one chosen of this method and its fellows; absent where it is no such variant. */
+  readonly sweep?: string;
 }
+
+/** What is halved so that sweeps are chosen on one half and reported on the other. */
+export type Halved = 'seeds' | 'tasks';
 
 /** What `keep` can ask for. */
 export type Kept = 'batches' | 'traces';
@@ -46,4 +51,6 @@ export interface Plan {
   readonly keep: readonly Kept[];
   readonly tasks: readonly PlannedTask[];
   readonly methods: readonly PlannedMethod[];
+  /** How sweeps are chosen; absent where the plan has none. */
+  readonly choose?: { readonly on: Halved };
 }
