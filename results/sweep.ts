@@ -31,7 +31,8 @@ export interface ChosenRows {
   readonly rows: readonly CellRow[];
   /** Seconds by the identity of these rows. */
   readonly seconds: ReadonlyMap<string, number>;
-  readonly sweeps: SweepChoices;
+  /** Null where there was nothing to choose. */
+  readonly sweeps: SweepChoices | null;
 }
 
 export interface ChooseOptions {
@@ -44,6 +45,22 @@ export interface ChooseOptions {
 }
 
 /**
+ * The rows to compare: all of them where the plan has no sweep, else those that `chooseSettings` leaves.
+ *
+ * @throws OnebatchError (`bad-input`) where the same cells are asked for without a sweep; see also `chooseSettings`.
+ */
+export function rowsToReport(
+  rows: readonly CellRow[],
+  plan: SweepPlan | undefined,
+  options: ChooseOptions,
+): ChosenRows {
+  if (plan !== undefined) return chooseSettings(rows, plan, options);
+  if (options.sameCells === true)
+    throw new OnebatchError('bad-input', '--same-cells: the plan sweeps no setting; leave it out');
+  return { rows, seconds: options.seconds, sweeps: null };
+}
+
+/**
  * Chooses the settings of every sweep on one half of the cells, and gives the rows of the other half to report. What is
  * reported had no part in the choice, so that its means are those of the chosen settings, free of the winner's curse.
  * All methods are reported on the same half, so that they stay paired.
@@ -53,12 +70,13 @@ export interface ChooseOptions {
 export function chooseSettings(
   rows: readonly CellRow[],
   plan: SweepPlan,
-  { seconds, score, sameCells = false }: ChooseOptions,
-): ChosenRows {
+  options: ChooseOptions,
+): ChosenRows & { readonly sweeps: SweepChoices } {
+  const { seconds, sameCells = false } = options;
   const choosing = choosingHalf(plan.on, plan.tasks);
   const chooses: Half = (row) => sameCells || choosing(row);
   const reports: Half = (row) => sameCells || !choosing(row);
-  const choices = plan.sweeps.map((sweep) => chooseOne(rows, sweep, chooses, score));
+  const choices = plan.sweeps.map((sweep) => chooseOne(rows, sweep, chooses, options));
   const label = labelsOf(plan, choices);
   const kept = rows.flatMap((row) => {
     const method = reports(row) ? label(row.method) : undefined;
@@ -84,20 +102,24 @@ export function chooseSettings(
   };
 }
 
-function chooseOne(rows: readonly CellRow[], sweep: Sweep, chooses: Half, by: PairedScore): SweepChoice {
-  const { method } = sweep;
-  const labels = sweep.variants.map(({ label }) => label);
-  const known = new Set(labels);
+function chooseOne(
+  rows: readonly CellRow[],
+  { method, variants }: Sweep,
+  chooses: Half,
+  { score, sameCells = false }: ChooseOptions,
+): SweepChoice {
   if (rows.some((row) => row.method === method))
     throw new OnebatchError(
       'bad-ledger',
       `${method} is a sweep in one ledger and a method in another; compare each alone`,
     );
+  const labels = variants.map(({ label }) => label);
+  const known = new Set(labels);
   const ours = rows.filter((row) => known.has(row.method) && chooses(row));
-  const chosen = chooseVariant(ours, labels, by);
+  const chosen = chooseVariant(ours, labels, score);
   if (chosen === undefined)
-    refuse(method, `no cell that all its ${labels.length} variants have, to choose on`);
-  return { method, variants: labels.length, by, ...chosen };
+    refuse(method, `no cell${sameCells ? '' : ' to choose on'} that all its ${labels.length} variants have`);
+  return { method, variants: labels.length, by: score, ...chosen };
 }
 
 /** The label to report a method under; `undefined` for variants that were not chosen. */
@@ -107,9 +129,9 @@ function labelsOf({ sweeps }: SweepPlan, choices: readonly SweepChoice[]) {
   return (method: string): string | undefined => (variants.has(method) ? chosen.get(method) : method);
 }
 
-function refuse(method: string, what: string): never {
+function refuse(method: string, lacking: string): never {
   throw new OnebatchError(
     'bad-ledger',
-    `the sweep of ${method} has ${what} yet; go on with the rehearsal, or say --same-cells`,
+    `the sweep of ${method} has ${lacking} yet; go on with the rehearsal`,
   );
 }

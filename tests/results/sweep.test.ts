@@ -3,7 +3,7 @@ import { type CellRow, cellId } from '../../harness/row.js';
 import { describeChoices } from '../../results/sweep/describe-choices.js';
 import { choosingHalf } from '../../results/sweep/halves.js';
 import type { SweepPlan } from '../../results/sweep/sweep-plan.js';
-import { chooseSettings } from '../../results/sweep.js';
+import { chooseSettings, rowsToReport } from '../../results/sweep.js';
 import { makeRow, makeSeconds } from './made-ledger.js';
 
 const tasks = ['s', 't', 'u'];
@@ -144,13 +144,13 @@ describe('chooseSettings(rows, plan, options)', () => {
       'a variant without a cell to choose on',
       rows.filter(({ method, seed }) => method !== 'firm(b)' || seed % 2 === 1),
       plan('seeds'),
-      'the sweep of firm has no cell that all its 2 variants have, to choose on yet; go on with the rehearsal, or say --same-cells',
+      'the sweep of firm has no cell to choose on that all its 2 variants have yet; go on with the rehearsal',
     ],
     [
       'a chosen variant without a cell to report',
       rows.filter(({ seed }) => seed === 2),
       plan('seeds'),
-      'the sweep of firm has no cell to report yet; go on with the rehearsal, or say --same-cells',
+      'the sweep of firm has no cell to report yet; go on with the rehearsal',
     ],
     [
       'a method with the label of the sweep',
@@ -160,6 +160,19 @@ describe('chooseSettings(rows, plan, options)', () => {
     ],
   ])('refuses %s', (_, given, sweeps, message) => {
     expect(() => chooseSettings(given, sweeps, options)).toThrow(message);
+  });
+});
+
+describe('rowsToReport(rows, plan, options)', () => {
+  test('chooses where the plan has a sweep, and leaves all rows as they are where it has none', () => {
+    expect(rowsToReport(rows, plan('seeds'), options)).toEqual(chooseSettings(rows, plan('seeds'), options));
+    expect(rowsToReport(rows, undefined, options)).toEqual({ rows, seconds: options.seconds, sweeps: null });
+  });
+
+  test('refuses the same cells where nothing is chosen', () => {
+    expect(() => rowsToReport(rows, undefined, { ...options, sameCells: true })).toThrow(
+      '--same-cells: the plan sweeps no setting; leave it out',
+    );
   });
 });
 
