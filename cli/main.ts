@@ -9,9 +9,28 @@ import { endQuietlyWithoutReader, remark } from './terminal.js';
 import { explainUsage } from './usage.js';
 
 const vocabulary = {
-  commands: ['rehearse', 'list'],
-  options: ['out', 'workers', 'seeds', 'help', 'version'],
+  commands: ['rehearse', 'compare', 'list'],
+  options: [
+    'out',
+    'workers',
+    'seeds',
+    'until-decided',
+    'most-seeds',
+    'against',
+    'margin',
+    'score',
+    'format',
+    'help',
+    'version',
+  ],
 };
+
+/** An option with a value. Given twice, the last counts. */
+const word = {
+  type: 'string',
+  requiresArg: true,
+  coerce: (given: string | readonly string[] | undefined) => [given].flat().at(-1),
+} as const;
 
 const typed = hideBin(process.argv);
 const program = yargs(typed)
@@ -24,12 +43,52 @@ const program = yargs(typed)
     (command) =>
       command
         .positional('plan', { type: 'string', describe: 'plan file; without one, the demo is run' })
-        .option('out', { type: 'string', requiresArg: true, describe: 'output folder [default: out/<plan>]' })
-        .option('workers', { type: 'string', requiresArg: true, describe: 'worker threads [default: cores]' })
-        .option('seeds', { type: 'string', requiresArg: true, describe: "repeats, instead of the plan's" }),
+        .option('out', { ...word, describe: 'output folder [default: out/<plan>]' })
+        .option('workers', { ...word, describe: 'worker threads [default: cores]' })
+        .option('seeds', { ...word, describe: "repeats, instead of the plan's" })
+        .option('until-decided', {
+          type: 'boolean',
+          describe: 'add seeds in rounds of so many until every verdict is reached',
+        })
+        .option('most-seeds', {
+          ...word,
+          describe: 'with --until-decided: seeds to stop at [default: 8 rounds]',
+        }),
     async (given) => {
       const { rehearse } = await import('./rehearse.js');
       process.exitCode = await rehearse(given);
+    },
+  )
+  .command(
+    'compare [ledgers..]',
+    'compare the methods of one or more ledgers',
+    (command) =>
+      command
+        .positional('ledgers', {
+          type: 'string',
+          array: true,
+          describe: 'folders that rehearsals wrote, or their ledger.csv',
+        })
+        .option('against', {
+          ...word,
+          describe: 'reference method [default: repeat-best]',
+        })
+        .option('margin', {
+          ...word,
+          describe: 'largest difference without meaning, in normalized score [default: 0.02]',
+        })
+        .option('score', {
+          ...word,
+          describe: 'best, median or lift [default: best]',
+        })
+        .option('format', {
+          ...word,
+          describe: 'terminal, markdown, csv, json or latex [default: terminal]',
+        })
+        .option('out', { ...word, describe: 'folder to write all formats into' }),
+    async (given) => {
+      const { compare } = await import('./compare.js');
+      process.exitCode = await compare(given);
     },
   )
   .command(
@@ -47,7 +106,7 @@ const program = yargs(typed)
   )
   .demandCommand(1, 'name a command; see onebatch --help')
   .strict()
-  .parserConfiguration({ 'duplicate-arguments-array': false, 'boolean-negation': false })
+  .parserConfiguration({ 'boolean-negation': false })
   .version(version)
   .wrap(96)
   .fail((complaint, error) => {

@@ -1,6 +1,8 @@
 import type { OptimumKnowledge } from '../harness/task.js';
+import { describeComparison } from './comparison-foot.js';
 import type { Estimate, IntervalMethod } from './estimate.js';
-import type { Overall } from './overall.js';
+import { interquartileResamples, type Overall } from './overall.js';
+import type { Against } from './reference.js';
 import type { CountRange, Section } from './section.js';
 import { bootstrapFrom } from './statistics/mean-interval.js';
 
@@ -28,8 +30,8 @@ export interface Foot {
   readonly tops: readonly TopKnown[];
   /** How the intervals were made; empty where one seed allows none. */
   readonly intervals: readonly string[];
-  /** What the intervals do not say. */
-  readonly caution: string;
+  /** How methods were held against the reference; empty where there was none to compare. */
+  readonly comparison: readonly string[];
   readonly failures: string;
   readonly version: string;
 }
@@ -55,7 +57,7 @@ const columns: readonly ColumnMeaning[] = [
 export function writeFoot(
   sections: readonly Section[],
   overall: Overall | null,
-  options: { readonly version: string; readonly resamples: number },
+  options: { readonly version: string; readonly resamples: number; readonly against: Against },
 ): Foot {
   const seeds = sections.map((section) => section.seeds);
   return {
@@ -66,12 +68,17 @@ export function writeFoot(
     curtains: [...new Set(sections.map(({ curtain }) => curtain))],
     tops: sections.map(({ task, curtain, top }) => ({ task, curtain, known: top })),
     intervals: describeIntervals(sections, overall, options.resamples),
-    caution:
-      'Each interval is of one method: they are not paired tests between methods, and are not corrected for the number of methods.',
-    failures:
-      'A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.',
+    comparison: describeComparison(sections, overall, options.against),
+    failures: describeFailures(sections),
     version: options.version,
   };
+}
+
+function describeFailures(sections: readonly Section[]): string {
+  const all = sections.flatMap(({ methods }) => methods);
+  const failures = all.reduce((sum, scores) => sum + scores.failures, 0);
+  const cells = all.reduce((sum, scores) => sum + scores.cells, 0);
+  return `${failures} of ${cells} cells failed. A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.`;
 }
 
 function describeIntervals(
@@ -85,6 +92,7 @@ function describeIntervals(
   ]);
   const aggregates =
     overall === null ? [] : [overall.bestVisible.mean, ...overall.methods.map((it) => it.lift)];
+  const iqmDraws = Math.min(resamples, interquartileResamples).toLocaleString('en-US');
   const few = sections.some(({ methods }) => methods.some(({ cells }) => cells < bootstrapFrom));
   const draws = resamples.toLocaleString('en-US');
   const texts: [boolean, string][] = [
@@ -98,7 +106,7 @@ function describeIntervals(
     ],
     [
       uses(aggregates, 'stratified-percentile'),
-      `95 % intervals over all tasks: percentile bootstrap over the seeds within each task, ${draws} resamples (Agarwal et al. 2021)${few ? `; too short with fewer than ${bootstrapFrom} seeds a task` : ''}.`,
+      `95 % intervals over all tasks: percentile bootstrap over the seeds within each task, ${draws} resamples, ${iqmDraws} for the IQM (Agarwal et al. 2021)${few ? `; too short with fewer than ${bootstrapFrom} seeds a task` : ''}.`,
     ],
     [means.some((estimate) => estimate?.interval === null), 'No interval where there is a single cell.'],
     [

@@ -3,7 +3,8 @@ import type { CellRow } from '../harness/row.js';
 import { type Interval, intervalLevel } from './estimate.js';
 import { differenceInterval } from './statistics/difference-interval.js';
 import { testWithin } from './statistics/equivalence.js';
-import { type SignFlipTest, signFlipTest } from './statistics/sign-flip.js';
+import type { Resampler } from './statistics/resampler.js';
+import { type SignFlipTest, type SignPatterns, signFlipTest } from './statistics/sign-flip.js';
 import { type StratifiedMean, stratifiedMean } from './statistics/stratified-mean.js';
 
 /** What of a cell two methods can be compared by. */
@@ -55,6 +56,8 @@ export interface DifferenceOptions {
   /** Confidence of the interval; 0.95 unless given. */
   readonly level?: number;
   readonly stream: Stream;
+  /** What tests of the same number of pairs share, instead of drawing for each from the stream. */
+  readonly shared?: { readonly patterns: SignPatterns; readonly resampler: Resampler };
 }
 
 /** How often a method won, tied or lost by more than a margin. */
@@ -122,18 +125,18 @@ export function testDifferences(differences: readonly number[], options: Differe
  */
 export function testTaskDifferences(
   tasks: readonly (readonly number[])[],
-  { margin, level = intervalLevel, stream }: DifferenceOptions,
+  { margin, level = intervalLevel, stream, shared }: DifferenceOptions,
 ): DifferenceTest {
   if (!(margin > 0 && Number.isFinite(margin))) throw new RangeError(`margin must be above 0, got ${margin}`);
   const about = stratifiedMean(tasks);
   const weighted = tasks.flatMap((pairs) => pairs.map((pair) => pair / (tasks.length * pairs.length)));
-  const flips = signFlipTest(weighted, { stream: stream.split('sign flips') });
+  const flips = signFlipTest(weighted, shared ?? { stream: stream.split('sign flips') });
   return {
     tasks: about.tasks,
     n: about.n,
     mean: about.mean,
     standardDeviation: about.standardDeviation ?? null,
-    interval: differenceInterval(tasks, { level, stream: stream.split('interval') }),
+    interval: differenceInterval(tasks, { level, ...(shared ?? { stream: stream.split('interval') }) }),
     p: flips.p,
     test: flips.method,
     monteCarloStandardError: flips.method === 'sign-flip-drawn' ? flips.monteCarloStandardError : 0,

@@ -39,6 +39,11 @@ export interface Plan {
   readonly methodSeed?: number;
   /** Repeats: cells run with seeds 1 … seeds. */
   readonly seeds: number;
+  /**
+   * Numbers of seeds, ascending up to `seeds`, after which verdicts are looked at and the rehearsal ends if all are
+   * reached; absent where it runs all seeds whatever they say.
+   */
+  readonly looks?: readonly number[];
   /** Designs in a pool. */
   readonly pool: number;
   /** Designs in a batch. */

@@ -1,7 +1,8 @@
 import t from '@stdlib/stats-base-dists-t';
 import type { Stream } from '../../harness/random.js';
-import { bcaMeanInterval, defaultResamples } from './bca.js';
+import { bcaMeanInterval } from './bca.js';
 import { checkShare } from './check-values.js';
+import type { Resampler } from './resampler.js';
 import { stratifiedMean } from './stratified-mean.js';
 
 /** Up to so many pairs the interval of a mean difference is Student's; beyond, it is bootstrapped. */
@@ -29,20 +30,25 @@ export interface DifferenceInterval {
  *
  * @param tasks paired differences, one array a task.
  * @param options.level confidence, in (0, 1); 0.95 unless given.
+ * @param options.resampler resamples shared between intervals, instead of 10,000 drawn from the stream.
  * @returns `null` where a task has a single pair, which tells nothing of its spread.
  * @throws RangeError for no task, a task without a value, one that isn't finite, or a level outside (0, 1).
  */
 export function differenceInterval(
   tasks: readonly ArrayLike<number>[],
-  options: { readonly level?: number; readonly resamples?: number; readonly stream: Stream },
+  options: { readonly level?: number } & ({ readonly stream: Stream } | { readonly resampler: Resampler }),
 ): DifferenceInterval | null {
-  const { level = 0.95, resamples = defaultResamples, stream } = options;
+  const { level = 0.95 } = options;
   checkShare(level, 'level');
   const { mean, n, standardError, degreesOfFreedom } = stratifiedMean(tasks);
   if (standardError === undefined) return null;
   if (degreesOfFreedom === undefined) return { method: 'constant', level, low: mean, high: mean };
   if (tasks.length === 1 && n > studentUpTo) {
-    const { low, high } = bcaMeanInterval(tasks[0]!, { level, resamples, stream });
+    const drawn =
+      'resampler' in options
+        ? { replicates: options.resampler.meanDeviations(tasks[0]!) }
+        : { stream: options.stream };
+    const { low, high } = bcaMeanInterval(tasks[0]!, { level, ...drawn });
     return { method: 'bca', level, low, high };
   }
   const reach = t.quantile((1 + level) / 2, degreesOfFreedom) * standardError;

@@ -1,5 +1,5 @@
 import type { Stream } from '../../harness/random.js';
-import { bcaMeanInterval, defaultResamples } from './bca.js';
+import { bcaMeanInterval } from './bca.js';
 import { checkShare } from './check-values.js';
 import { moments } from './moments.js';
 import { studentInterval } from './student-interval.js';
@@ -49,13 +49,17 @@ interface UnknownMean extends Base {
  *
  * @param options.level confidence, in (0, 1); 0.95 unless given.
  * @param options.resamples bootstrap resamples; 10,000 unless given.
+ * @param options.replicates gives those of `bcaMeanInterval`, where they are shared; called only if needed.
  * @throws RangeError for no values, a value that isn't finite, or a level outside (0, 1).
  */
 export function meanInterval(
   values: ArrayLike<number>,
-  options: { readonly level?: number; readonly resamples?: number; readonly stream: Stream },
+  options: { readonly level?: number } & (
+    | { readonly resamples?: number; readonly stream: Stream }
+    | { readonly replicates: () => Float64Array }
+  ),
 ): MeanInterval {
-  const { level = 0.95, resamples = defaultResamples, stream } = options;
+  const { level = 0.95 } = options;
   checkShare(level, 'level');
   const { n, mean, standardDeviation } = moments(values);
   if (standardDeviation === undefined) return { method: 'none', n, mean, level };
@@ -64,6 +68,7 @@ export function meanInterval(
     const { low, high, degreesOfFreedom } = studentInterval(values, { level });
     return { method: 'student-t', n, mean, level, degreesOfFreedom, low, high };
   }
-  const { low, high } = bcaMeanInterval(values, { level, resamples, stream });
+  const drawn = 'replicates' in options ? { replicates: options.replicates() } : options;
+  const { low, high, resamples } = bcaMeanInterval(values, { level, ...drawn });
   return { method: 'bca', n, mean, level, resamples, low, high };
 }

@@ -3,7 +3,7 @@ import { type Aggregate, countedAggregate } from './aggregate.js';
 import { defaultResamples } from './bca.js';
 import { checkCount, checkShare } from './check-values.js';
 import { quantileSorted } from './quantile.js';
-import { haveEqualShape, redrawRuns, stackTasks } from './task-runs.js';
+import { haveEqualShape, redrawRuns, stackTasks, type TaskRuns } from './task-runs.js';
 
 /** How a stratified bootstrap is carried out. */
 export interface StratifiedOptions {
@@ -42,21 +42,56 @@ export function stratifiedBootstrap(
   tasks: readonly ArrayLike<number>[],
   options: StratifiedOptions,
 ): StratifiedInterval {
-  const runs = stackTasks(tasks);
-  const aggregate = countedAggregate(runs, options.aggregate);
-  const counts = new Uint32Array(runs.values.length);
-  const interval = percentileInterval(options, () => {
-    redrawRuns(runs, counts, options.stream);
-    return aggregate(counts);
-  });
-  return {
+  return bootstrapTogether([stackTasks(tasks)], options)[0]!;
+}
+
+/**
+ * `stratifiedBootstrap` of several methods. Methods with the same numbers of runs are given the same redrawn runs, so
+ * that the random numbers are drawn once, and methods with the same scores have the same interval.
+ *
+ * @param methods for each method its tasks, as for `stratifiedBootstrap`.
+ */
+export function stratifiedBootstraps(
+  methods: readonly (readonly ArrayLike<number>[])[],
+  options: StratifiedOptions,
+): StratifiedInterval[] {
+  const stacked = methods.map(stackTasks);
+  const shapes = new Map<string, TaskRuns[]>();
+  for (const runs of stacked) {
+    const shape = runs.starts.join();
+    shapes.set(shape, [...(shapes.get(shape) ?? []), runs]);
+  }
+  const found = new Map<TaskRuns, StratifiedInterval>();
+  for (const alike of shapes.values()) {
+    const stream = options.stream.split('runs drawn');
+    const intervals = bootstrapTogether(alike, { ...options, stream });
+    for (const [i, runs] of alike.entries()) found.set(runs, intervals[i]!);
+  }
+  return stacked.map((runs) => found.get(runs)!);
+}
+
+/** The intervals of methods with the same numbers of runs. */
+function bootstrapTogether(methods: readonly TaskRuns[], options: StratifiedOptions): StratifiedInterval[] {
+  const { level = 0.95, resamples = defaultResamples, stream } = options;
+  checkShare(level, 'level');
+  checkCount(resamples, 'resamples');
+  const aggregates = methods.map((runs) => countedAggregate(runs, options.aggregate));
+  const replicates = methods.map(() => new Float64Array(resamples));
+  const [shape] = methods;
+  const counts = new Uint32Array(shape!.values.length);
+  for (let b = 0; b < resamples; b++) {
+    redrawRuns(shape!, counts, stream);
+    for (let m = 0; m < methods.length; m++) replicates[m]![b] = aggregates[m]!(counts);
+  }
+  counts.fill(1);
+  return methods.map((runs, m) => ({
     method: 'stratified-percentile',
     aggregate: options.aggregate,
-    estimate: aggregate(counts.fill(1)),
+    estimate: aggregates[m]!(counts),
     tasks: runs.tasks,
     runs: counts.length,
-    ...interval,
-  };
+    ...percentiles(replicates[m]!, level),
+  }));
 }
 
 /**
@@ -106,8 +141,16 @@ export function percentileInterval(
   checkCount(resamples, 'resamples');
   const replicates = new Float64Array(resamples);
   for (let b = 0; b < resamples; b++) replicates[b] = draw();
+  return percentiles(replicates, level);
+}
+
+/** The percentile interval of replicates, which are put into order. */
+export function percentiles(
+  replicates: Float64Array,
+  level: number,
+): { readonly level: number; readonly resamples: number; readonly low: number; readonly high: number } {
   replicates.sort();
   const low = quantileSorted(replicates, (1 - level) / 2);
   const high = quantileSorted(replicates, (1 + level) / 2);
-  return { level, resamples, low, high };
+  return { level, resamples: replicates.length, low, high };
 }

@@ -2,16 +2,45 @@ import { writeToString } from 'fast-csv';
 import type { Comparison } from '../comparison.js';
 import type { Estimate } from '../estimate.js';
 import type { Overall, OverallScores } from '../overall.js';
+import type { ReferenceBlock } from '../reference.js';
 import type { MethodScores, Section } from '../section.js';
+import type { SeedsNeeded } from '../verdict.js';
 
 type Fields = Record<string, string | number | null>;
 
-const estimates = ['best', 'bestInterquartile', 'median', 'medianInterquartile', 'lift', 'optimism'] as const;
+const estimates = [
+  'best',
+  'bestInterquartile',
+  'median',
+  'medianInterquartile',
+  'lift',
+  'optimism',
+  'difference',
+] as const;
 
 const columns: readonly string[] = [
   ...['scope', 'task', 'curtain', 'row', 'method', 'settings', 'tasks', 'cells', 'failures'],
   ...estimates.flatMap((name) => [name, `${name}Low`, `${name}High`, `${name}Interval`, `${name}Cells`]),
   ...[
+    'reference',
+    'score',
+    'margin',
+    'p',
+    'adjustedP',
+    'test',
+    'equivalenceP',
+    'adjustedEquivalenceP',
+    'verdict',
+    'seedsNeeded',
+    'pairs',
+    'wins',
+    'ties',
+    'losses',
+    'meanRank',
+    'criticalDifference',
+    'beatVisible',
+    'beatVisibleLow',
+    'beatVisibleHigh',
     'level',
     'distinct',
     'seconds',
@@ -53,13 +82,14 @@ function sectionFields(section: Section): Fields[] {
     ...section.methods.map((scores) => ({
       ...shared,
       ...methodFields(scores),
+      ...referenceFields(scores.method, section.reference),
       ...estimateFields('best', scores.best),
       ...estimateFields('median', scores.median),
     })),
   ];
 }
 
-function overallFields({ sections, bestVisible, methods }: Overall): Fields[] {
+function overallFields({ sections, bestVisible, methods, reference, ranks }: Overall): Fields[] {
   return [
     {
       scope: 'all tasks',
@@ -71,6 +101,9 @@ function overallFields({ sections, bestVisible, methods }: Overall): Fields[] {
       scope: 'all tasks',
       tasks: scores.sections,
       ...methodFields(scores),
+      ...referenceFields(scores.method, reference),
+      meanRank: ranks?.methods.find(({ method }) => method === scores.method)?.meanRank ?? null,
+      criticalDifference: ranks?.criticalDifference ?? null,
       ...estimateFields('best', scores.best.mean),
       ...estimateFields('bestInterquartile', scores.best.interquartileMean),
       ...estimateFields('median', scores.median.mean),
@@ -83,10 +116,29 @@ function bestVisibleFields(best: Estimate): Fields {
   return { row: 'best visible', cells: best.n, ...estimateFields('best', best) };
 }
 
+function referenceFields(method: string, block: ReferenceBlock | null): Fields {
+  const against = block?.methods.find((it) => it.method === method);
+  if (block === null || against === undefined) return {};
+  const { p, adjustedP, test, equivalenceP, adjustedEquivalenceP, verdict, seedsNeeded } = against;
+  const { pairs, wins, ties, losses, difference } = against;
+  return {
+    ...{ reference: block.method, score: block.score, margin: block.margin },
+    ...{ p, adjustedP, test, equivalenceP, adjustedEquivalenceP, verdict, pairs, wins, ties, losses },
+    seedsNeeded: seedsNeeded === null ? null : writeSeeds(seedsNeeded),
+    ...estimateFields('difference', difference),
+  };
+}
+
+function writeSeeds(needed: SeedsNeeded): string | number {
+  if (needed.kind === 'about') return needed.seeds;
+  return needed.kind === 'unknown' ? 'unknown' : `>${needed.seeds}`;
+}
+
 function methodFields(scores: MethodScores | OverallScores): Fields {
-  const { method, settings, cells, failures, lift, optimism, distinct, seconds } = scores;
+  const { method, settings, cells, failures, lift, optimism, distinct, seconds, beatVisible } = scores;
   return {
     ...{ row: 'method', method, settings, cells, failures, distinct, seconds },
+    ...{ beatVisible: beatVisible.share, beatVisibleLow: beatVisible.low, beatVisibleHigh: beatVisible.high },
     ...estimateFields('lift', lift),
     ...(optimism === null ? {} : estimateFields('optimism', optimism)),
   };

@@ -1,5 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import type { CellRow } from '../../harness/row.js';
 import { type Comparison, compareRows } from '../../results/comparison.js';
 import { makeRow, makeSeconds, type RowParts } from './made-ledger.js';
 
@@ -48,7 +49,8 @@ describe('compareRows(rows, options): one task', () => {
     const one = compareRows(makeMethod('a', [0.5]), { version });
     expect(methodOf(one, 'a').best).toEqual({ value: 0.5, n: 1, interval: null });
     expect(one.sections[0]!.bestVisible.interval).toBeNull();
-    expect(one.notes.better).toEqual([]);
+    expect(one.sections[0]!.reference).toBeNull();
+    expect(one.notes.verdicts).toEqual([]);
   });
 
   it('takes optimism over the cells that stated a belief, and says how many', () => {
@@ -163,14 +165,17 @@ describe('compareRows(rows, options): notes', () => {
     makeRow({ method: 'naive', seed, best: 0.4, optimism }),
   );
 
-  it('names as better exactly the methods whose interval of the lift lies above 0', () => {
-    const { better } = compareRows([...careful, ...naive, ...makeMethod('wide', [0.1, 1.9, 0.6, 0.9])], {
-      version,
-    }).notes;
-    expect(better).toHaveLength(1);
-    expect(better[0]!.methods).toEqual(['careful']);
-    // Mean lift 0.1175, deviation 0.01708, t(3) = 3.182 of the printed tables: ± 0.0272.
-    expect(better[0]!.text).toContain('careful +0.12 [+0.09, +0.14]');
+  it('tells the verdicts against the reference of each task, with differences and intervals', () => {
+    const few = { version, against: 'careful' };
+    const worse = makeMethod('worse', [0.4, 0.41, 0.45, 0.43]);
+    // Four pairs allow no p below 2/16, so nothing can be decided.
+    expect(compareRows([...careful, ...worse], few).notes.verdicts.map(({ text }) => text)).toEqual([
+      'against careful on hartmann-6: undecided: all 1, the nearest (worse) at about 6 seeds',
+    ]);
+    const more = (rows: readonly CellRow[]) => [...rows, ...rows].map((row, i) => ({ ...row, seed: i }));
+    const [note] = compareRows([...more(careful), ...more(worse)], few).notes.verdicts;
+    // −0.30, −0.31, −0.29, −0.28, each twice: deviation 0.01195, t(7) = 2.365 of the printed tables: ± 0.0100.
+    expect(note!.text).toBe('against careful on hartmann-6: hurts worse -0.295 [-0.305, -0.285]');
   });
 
   it('names as fooled the most optimistic method whose optimism excludes 0 and did not pay', () => {
@@ -186,10 +191,6 @@ describe('compareRows(rows, options): notes', () => {
     expect(compareRows([...careful, ...unsure], { version }).notes.fooled).toEqual([]);
     const winner = naive.map((row) => ({ ...row, best: 0.95, lift: 0.35 }));
     expect(compareRows([...careful, ...winner], { version }).notes.fooled).toEqual([]);
-  });
-
-  it('says that its intervals are no tests between methods', () => {
-    expect(compareRows(careful, { version }).foot.caution).toMatch(/not paired tests.*not corrected/);
   });
 });
 
