@@ -6,6 +6,8 @@ import { type Comparison, compareRows } from '../results/comparison.js';
 import { replaceFile } from '../results/ledger.js';
 import { mergeLedgers } from '../results/merge-ledgers.js';
 import { type PairedScore, pairedScores } from '../results/paired.js';
+import { mergeSweepPlans } from '../results/sweep/sweep-plan.js';
+import { rowsToReport } from '../results/sweep.js';
 import { tableFormats } from '../results/tables/index.js';
 import { renderTerminal } from '../results/tables/terminal.js';
 import { type ExitCode, exitCodes } from './exit-codes.js';
@@ -20,6 +22,7 @@ export interface CompareArguments {
   readonly margin?: string | undefined;
   readonly score?: string | undefined;
   readonly format?: string | undefined;
+  readonly sameCells?: boolean | undefined;
   readonly out?: string | undefined;
 }
 
@@ -37,7 +40,12 @@ export async function compare(given: CompareArguments): Promise<ExitCode> {
   const margin = readMargin(given.margin);
   if (given.out === '') throw new OnebatchError('bad-input', '--out: is empty; name a folder');
   const ledgers = await readLedgers(given.ledgers ?? []);
-  const { rows, seconds } = mergeLedgers(ledgers);
+  const merged = mergeLedgers(ledgers);
+  const { rows, seconds, sweeps } = rowsToReport(
+    merged.rows,
+    mergeSweepPlans(ledgers.map((ledger) => ledger.sweeps)),
+    { seconds: merged.seconds, score, sameCells: given.sameCells ?? false },
+  );
   const { seed, order } = ledgers[0]!;
   const comparison = compareRows(rows, {
     version,
@@ -46,6 +54,7 @@ export async function compare(given: CompareArguments): Promise<ExitCode> {
     margin,
     score,
     looks: looksOf(ledgers),
+    sweeps,
     ...(seed === undefined ? {} : { seed }),
     ...(order === undefined ? {} : { order }),
   });

@@ -16,6 +16,7 @@ const vocabulary = {
     'seeds',
     'until-decided',
     'most-seeds',
+    'same-cells',
     'against',
     'margin',
     'score',
@@ -24,6 +25,11 @@ const vocabulary = {
     'version',
   ],
 };
+
+const sameCells = {
+  type: 'boolean',
+  describe: 'choose the settings of sweeps on the very cells that are reported; tables are marked',
+} as const;
 
 /** An option with a value. Given twice, the last counts. */
 const word = {
@@ -53,7 +59,8 @@ const program = yargs(typed)
         .option('most-seeds', {
           ...word,
           describe: 'with --until-decided: seeds to stop at [default: 8 rounds]',
-        }),
+        })
+        .option('same-cells', sameCells),
     async (given) => {
       const { rehearse } = await import('./rehearse.js');
       process.exitCode = await rehearse(given);
@@ -85,6 +92,7 @@ const program = yargs(typed)
           ...word,
           describe: 'terminal, markdown, csv, json or latex [default: terminal]',
         })
+        .option('same-cells', sameCells)
         .option('out', { ...word, describe: 'folder to write all formats into' }),
     async (given) => {
       const { compare } = await import('./compare.js');

@@ -5,12 +5,14 @@ import { ledgerName, readLedger } from '../results/ledger.js';
 import { readManifest } from '../results/manifest.js';
 import type { ReadLedger } from '../results/merge-ledgers.js';
 import type { PlanOrder } from '../results/scores.js';
+import { reportedLabels, type SweepPlan, sweepPlanOf } from '../results/sweep/sweep-plan.js';
 
 /** A ledger with what its manifest, where there is one, says of its plan. */
 export interface FoundLedger extends ReadLedger {
   readonly seed?: number;
   readonly order?: PlanOrder;
   readonly looks?: readonly number[] | undefined;
+  readonly sweeps?: SweepPlan | undefined;
 }
 
 /**
@@ -35,9 +37,10 @@ export async function readLedgers(places: readonly string[]): Promise<FoundLedge
         : {
             seed: plan.seed,
             looks: plan.looks,
+            sweeps: sweepPlanOf(plan),
             order: {
               tasks: plan.tasks.map(({ label }) => label),
-              methods: plan.methods.map(({ label }) => label),
+              methods: reportedLabels(plan),
             },
           }),
     });

@@ -27,7 +27,7 @@ const workerFile = new URL('./worker.js', import.meta.url);
 
 /** Runs a plan, or goes on with it, and ends with its comparison. */
 export async function rehearse(given: RehearseArguments): Promise<ExitCode> {
-  const { plan, out, workers } = await readRehearsal(given, catalogue);
+  const { plan, out, workers, sameCells } = await readRehearsal(given, catalogue);
   if (plan.backend !== 'wasm') await useBackend(plan.backend as BackendName);
   tryStages(plan);
   await claimFolder(out, provenanceOf(plan));
@@ -35,7 +35,13 @@ export async function rehearse(given: RehearseArguments): Promise<ExitCode> {
   const ledger = await Ledger.open(out);
   const interruption = listenForInterruption();
   try {
-    const comparison = await runRounds(plan, { out, ledger, workers, signal: interruption.signal });
+    const comparison = await runRounds(plan, {
+      out,
+      ledger,
+      workers,
+      sameCells,
+      signal: interruption.signal,
+    });
     if (comparison === undefined) return exitCodes.interrupted;
     say(renderTerminal(comparison, { style: inStyle() }));
     return ledger.rows.some((row) => row.status === 'failed') ? exitCodes.cellsFailed : exitCodes.done;
@@ -50,6 +56,7 @@ interface Course {
   readonly out: string;
   readonly ledger: Ledger;
   readonly workers: number;
+  readonly sameCells: boolean;
   /** Aborted when a person interrupts. */
   readonly signal: AbortSignal;
 }
@@ -72,7 +79,7 @@ function tryStages(plan: Plan): void {
 
 /** Runs the plan's seeds, or rounds of them until every verdict is reached; nothing when a person interrupted it. */
 async function runRounds(plan: Plan, course: Course): Promise<Comparison | undefined> {
-  const { out, ledger, signal } = course;
+  const { out, ledger, sameCells, signal } = course;
   const order = ledgerOrder(plan);
   const { looks = [plan.seeds] } = plan;
   let comparison: Comparison | undefined;
@@ -80,7 +87,7 @@ async function runRounds(plan: Plan, course: Course): Promise<Comparison | undef
     await runCells({ ...plan, seeds }, course);
     if (signal.aborted) return undefined;
     await ledger.sort(order);
-    comparison = await writeComparison(out, plan, ledger);
+    comparison = await writeComparison(out, { plan, sameCells }, ledger);
     if (plan.looks === undefined) break;
     const { reached, all } = countVerdicts(comparison);
     remark(`Look ${round + 1} of ${looks.length}, at ${seeds} seeds: ${reached} of ${all} verdicts reached.`);

@@ -10,6 +10,7 @@ import { type Against, chooseReference } from './reference.js';
 import { type PlanOrder, sortCells } from './scores.js';
 import { type Section, scoreSection } from './section.js';
 import { defaultResamples } from './statistics/bca.js';
+import type { SweepChoices } from './sweep.js';
 import { defaultAlpha } from './verdict.js';
 
 /**
@@ -25,6 +26,8 @@ export interface Comparison {
   readonly seed: number;
   /** What methods are held against, and how. */
   readonly against: Against;
+  /** How settings were chosen; null where the plan has no sweep. */
+  readonly sweeps: SweepChoices | null;
   /** One for each task behind each curtain. */
   readonly sections: readonly Section[];
   /** Absent (null) where there is only one section. */
@@ -53,6 +56,8 @@ export interface CompareOptions {
   readonly margin?: number | undefined;
   /** Numbers of seeds, ascending, after which verdicts were looked at while seeds were added: a plan's `looks`. */
   readonly looks?: readonly number[] | undefined;
+  /** How settings were chosen, where the rows are what `chooseSettings` left to report. */
+  readonly sweeps?: SweepChoices | null;
 }
 
 /**
@@ -64,6 +69,7 @@ export interface CompareOptions {
  */
 export function compareRows(rows: readonly CellRow[], options: CompareOptions): Comparison {
   const { version, seconds = new Map(), seed = 0, order, resamples = defaultResamples, looks } = options;
+  const { sweeps = null } = options;
   const cells = sortCells(rows, order);
   const against = {
     method: chooseReference(cells, options.against),
@@ -87,9 +93,10 @@ export function compareRows(rows: readonly CellRow[], options: CompareOptions): 
     level: intervalLevel,
     seed,
     against,
+    sweeps,
     sections,
     overall,
     notes: takeNotes(cells, sections, overall),
-    foot: writeFoot(sections, overall, { version, resamples, against }),
+    foot: writeFoot(sections, overall, { version, resamples, against, sweeps }),
   };
 }

@@ -5,6 +5,8 @@ import { interquartileResamples, type Overall } from './overall.js';
 import type { Against } from './reference.js';
 import type { CountRange, Section } from './section.js';
 import { bootstrapFrom } from './statistics/mean-interval.js';
+import { describeChoices } from './sweep/describe-choices.js';
+import type { SweepChoices } from './sweep.js';
 
 /** What a column of the tables means. */
 export interface ColumnMeaning {
@@ -28,6 +30,8 @@ export interface Foot {
   readonly seeds: CountRange;
   readonly curtains: readonly string[];
   readonly tops: readonly TopKnown[];
+  /** How settings were chosen, and what that leaves to report; empty where there was nothing to choose. */
+  readonly sweeps: readonly string[];
   /** How the intervals were made; empty where one seed allows none. */
   readonly intervals: readonly string[];
   /** How methods were held against the reference; empty where there was none to compare. */
@@ -57,7 +61,12 @@ const columns: readonly ColumnMeaning[] = [
 export function writeFoot(
   sections: readonly Section[],
   overall: Overall | null,
-  options: { readonly version: string; readonly resamples: number; readonly against: Against },
+  options: {
+    readonly version: string;
+    readonly resamples: number;
+    readonly against: Against;
+    readonly sweeps: SweepChoices | null;
+  },
 ): Foot {
   const seeds = sections.map((section) => section.seeds);
   return {
@@ -67,6 +76,7 @@ export function writeFoot(
     seeds: { least: Math.min(...seeds), most: Math.max(...seeds) },
     curtains: [...new Set(sections.map(({ curtain }) => curtain))],
     tops: sections.map(({ task, curtain, top }) => ({ task, curtain, known: top })),
+    sweeps: options.sweeps === null ? [] : describeChoices(options.sweeps),
     intervals: describeIntervals(sections, overall, options.resamples),
     comparison: describeComparison(sections, overall, options.against),
     failures: describeFailures(sections),

@@ -7,7 +7,7 @@ export function describeChoices({ on, choosingTasks, choices }: SweepChoices): s
   const half = on === 'seeds' ? 'the even seeds' : `the tasks ${choosingTasks.join(', ')}`;
   const reported =
     on === 'seeds'
-      ? 'Tables report the odd seeds only, on which no settings were chosen; seeds that would decide are such seeds, and a plan needs twice as many.'
+      ? 'Tables report the odd seeds only, on which no settings were chosen. Seeds that would decide count these alone; a plan needs twice as many.'
       : 'Tables report the other tasks only, on which no settings were chosen.';
   return [...choices.map((choice) => describe(choice, half)), reported];
 }

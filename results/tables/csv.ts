@@ -4,6 +4,7 @@ import type { Estimate } from '../estimate.js';
 import type { Overall, OverallScores } from '../overall.js';
 import type { ReferenceBlock } from '../reference.js';
 import type { MethodScores, Section } from '../section.js';
+import type { SweepChoices } from '../sweep.js';
 import type { SeedsNeeded } from '../verdict.js';
 
 type Fields = Record<string, string | number | null>;
@@ -49,6 +50,9 @@ const columns: readonly string[] = [
     'batchMost',
     'visibleLeast',
     'visibleMost',
+    'sweepVariants',
+    'sweepChosen',
+    'sweepChosenOn',
     'version',
   ],
 ];
@@ -57,11 +61,25 @@ const columns: readonly string[] = [
  * A comparison as tidy CSV: a header, then one line for each method and one for best visible in each section and over
  * all tasks. Numbers have full precision; what is missing is empty.
  */
-export function renderCsv({ sections, overall, level, version }: Comparison): Promise<string> {
+export function renderCsv({ sections, overall, level, version, sweeps }: Comparison): Promise<string> {
   const lines = [...sections.flatMap(sectionFields), ...(overall === null ? [] : overallFields(overall))].map(
-    (fields) => columns.map((column) => ({ level, version, ...fields })[column] ?? ''),
+    (fields) => {
+      const all: Fields = { level, version, ...sweepFields(fields['method'], sweeps), ...fields };
+      return columns.map((column) => all[column] ?? '');
+    },
   );
   return writeToString([columns as string[], ...lines], { includeEndRowDelimiter: true });
+}
+
+/** Which variant stands under the label of a sweep, and what it was chosen on. */
+function sweepFields(method: Fields[string] | undefined, sweeps: SweepChoices | null): Fields {
+  const choice = sweeps?.choices.find((it) => it.method === method);
+  if (sweeps === null || choice === undefined) return {};
+  return {
+    sweepVariants: choice.variants,
+    sweepChosen: choice.variant,
+    sweepChosenOn: sweeps.on === 'same cells' ? 'CAUTION: same cells' : `other half of ${sweeps.on}`,
+  };
 }
 
 function sectionFields(section: Section): Fields[] {

@@ -179,11 +179,12 @@ function noteBlocks({ fooled, failed, incomplete }: Notes): string[] {
   );
 }
 
-function footBlocks({ columns, intervals, comparison, failures, seeds, version }: Foot): string[] {
+function footBlocks({ columns, sweeps, intervals, comparison, failures, seeds, version }: Foot): string[] {
   const spread = seeds.least === seeds.most ? `${seeds.most}` : `${seeds.least} to ${seeds.most}`;
   const lines = [
     ...columns.map(({ column, meaning }) => `${column}: ${meaning}.`),
     `Seeds for each task: ${spread}.`,
+    ...sweeps,
     ...intervals,
     ...comparison,
     failures,

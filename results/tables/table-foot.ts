@@ -12,6 +12,7 @@ export function describeTable(comparison: Comparison, table: Section | Overall):
   const facts = [
     'true scores, normalized: 0 is the worst design of the pool, 1 the top; brackets hold 95 % intervals',
     describeSeeds(sections),
+    ...comparison.foot.sweeps.map((sentence) => sentence.replace(/\.$/, '')),
     ...describeTests(comparison, table),
     `${failures} of ${plural(cells, 'cell')} failed, counted as batches of the worst visible design`,
     `${sections.length === 1 ? 'curtain' : 'curtains'}: ${[...new Set(sections.map(({ curtain }) => curtain || 'none'))].join('; ')}`,

@@ -120,6 +120,7 @@ function explain({ foot }: Comparison): string[] {
   const width = Math.max(...columns.map(({ column }) => column.length));
   return [
     ...columns.map(({ column, meaning }) => `${column.padEnd(width)}  ${meaning}`),
+    ...foot.sweeps,
     ...foot.intervals,
     ...foot.comparison,
     foot.failures,

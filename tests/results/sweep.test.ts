@@ -183,7 +183,7 @@ describe('describeChoices(sweeps)', () => {
   test('by seeds', () => {
     expect(words('seeds')).toEqual([
       'Settings of firm: chosen among 2 by mean best on the even seeds (6 cells each): firm(b), mean best 0.900 there.',
-      'Tables report the odd seeds only, on which no settings were chosen; seeds that would decide are such seeds, and a plan needs twice as many.',
+      'Tables report the odd seeds only, on which no settings were chosen. Seeds that would decide count these alone; a plan needs twice as many.',
     ]);
   });
 
