@@ -1,18 +1,18 @@
 import { mkdir } from 'node:fs/promises';
 import { join } from 'node:path';
 import { OnebatchError } from '../harness/errors.js';
-import { suggestion } from '../harness/nearest-word.js';
 import { type Comparison, compareRows } from '../results/comparison.js';
 import { replaceFile } from '../results/ledger.js';
 import { mergeLedgers } from '../results/merge-ledgers.js';
 import { type PairedScore, pairedScores } from '../results/paired.js';
-import { mergeSweepPlans } from '../results/sweep/sweep-plan.js';
+import { mergeSweepPlans, reportedLabels, sweepPlanOf } from '../results/sweep/sweep-plan.js';
 import { rowsToReport } from '../results/sweep.js';
 import { tableFormats } from '../results/tables/index.js';
 import { renderTerminal } from '../results/tables/terminal.js';
 import { type ExitCode, exitCodes } from './exit-codes.js';
 import { version } from './package-root.js';
 import { type FoundLedger, readLedgers } from './read-ledgers.js';
+import { oneOf, readMargin } from './read-options.js';
 import { inStyle, remark, say } from './terminal.js';
 
 /** What a person may type after `onebatch compare`. */
@@ -40,13 +40,14 @@ export async function compare(given: CompareArguments): Promise<ExitCode> {
   const margin = readMargin(given.margin);
   if (given.out === '') throw new OnebatchError('bad-input', '--out: is empty; name a folder');
   const ledgers = await readLedgers(given.ledgers ?? []);
+  const plans = ledgers.map(({ provenance }) => provenance?.plan);
   const merged = mergeLedgers(ledgers);
   const { rows, seconds, sweeps } = rowsToReport(
     merged.rows,
-    mergeSweepPlans(ledgers.map((ledger) => ledger.sweeps)),
+    mergeSweepPlans(plans.map((plan) => plan && sweepPlanOf(plan))),
     { seconds: merged.seconds, score, sameCells: given.sameCells ?? false },
   );
-  const { seed, order } = ledgers[0]!;
+  const [plan] = plans;
   const comparison = compareRows(rows, {
     version,
     seconds,
@@ -55,8 +56,12 @@ export async function compare(given: CompareArguments): Promise<ExitCode> {
     score,
     looks: looksOf(ledgers),
     sweeps,
-    ...(seed === undefined ? {} : { seed }),
-    ...(order === undefined ? {} : { order }),
+    ...(plan === undefined
+      ? {}
+      : {
+          seed: plan.seed,
+          order: { tasks: plan.tasks.map(({ label }) => label), methods: reportedLabels(plan) },
+        }),
   });
   say((await render(comparison, format)).trimEnd());
   if (given.out !== undefined) await writeAll(comparison, given.out);
@@ -68,12 +73,12 @@ export async function compare(given: CompareArguments): Promise<ExitCode> {
  * depend on its scores in its own way, and nothing could be promised of verdicts over both.
  */
 function looksOf(ledgers: readonly FoundLedger[]): readonly number[] | undefined {
-  const [first, ...others] = ledgers;
-  const other = others.find(({ looks }) => looks?.join() !== first?.looks?.join());
-  if (other === undefined) return first?.looks;
+  const looks = ledgers.map(({ provenance }) => provenance?.plan.looks);
+  const other = looks.findIndex((those) => those?.join() !== looks[0]?.join());
+  if (other < 0) return looks[0];
   throw new OnebatchError(
     'bad-input',
-    `${first!.place} and ${other.place}: one was rehearsed until decided and the other was not, or with other looks; compare each alone`,
+    `${ledgers[0]!.place} and ${ledgers[other]!.place}: one was rehearsed until decided and the other was not, or with other looks; compare each alone`,
   );
 }
 
@@ -97,16 +102,4 @@ async function writeAll(comparison: Comparison, folder: string): Promise<void> {
     });
   }
   remark(`Wrote ${tableFormats.map(({ file }) => file).join(', ')} into ${folder}.`);
-}
-
-function oneOf(option: string, word: string, known: readonly string[]): string {
-  if (known.includes(word)) return word;
-  throw new OnebatchError('bad-input', `${option}: is "${word}"; ${suggestion(word, known)}`);
-}
-
-function readMargin(text: string | undefined): number | undefined {
-  if (text === undefined) return undefined;
-  const value = /^(\d+\.?\d*|\.\d+)(e-?\d+)?$/i.test(text) ? Number(text) : Number.NaN;
-  if (value > 0 && Number.isFinite(value)) return value;
-  throw new OnebatchError('bad-input', `--margin: is "${text}", must be a number above 0, such as 0.02`);
 }

@@ -9,7 +9,7 @@ import { endQuietlyWithoutReader, remark } from './terminal.js';
 import { explainUsage } from './usage.js';
 
 const vocabulary = {
-  commands: ['rehearse', 'compare', 'list'],
+  commands: ['rehearse', 'compare', 'guard', 'list'],
   options: [
     'out',
     'workers',
@@ -21,6 +21,9 @@ const vocabulary = {
     'margin',
     'score',
     'format',
+    'methods',
+    'strict',
+    'junit',
     'help',
     'version',
   ],
@@ -97,6 +100,26 @@ const program = yargs(typed)
     async (given) => {
       const { compare } = await import('./compare.js');
       process.exitCode = await compare(given);
+    },
+  )
+  .command(
+    'guard <baseline> <candidate>',
+    'look for methods that lost against an earlier ledger of the same plan',
+    (command) =>
+      command
+        .positional('baseline', { type: 'string', describe: 'folder of the ledger from before the change' })
+        .positional('candidate', { type: 'string', describe: 'folder of the ledger from after it' })
+        .option('margin', {
+          ...word,
+          describe: 'largest loss without meaning, in normalized score [default: 0.02]',
+        })
+        .option('score', { ...word, describe: 'best or median [default: best]' })
+        .option('methods', { ...word, describe: 'labels to compare, as a,b [default: all in both]' })
+        .option('strict', { type: 'boolean', describe: 'fail where there are too few seeds to show a loss' })
+        .option('junit', { ...word, describe: 'file to write an XML report for a build server into' }),
+    async (given) => {
+      const { guard } = await import('./guard.js');
+      process.exitCode = await guard(given);
     },
   )
   .command(

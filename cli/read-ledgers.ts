@@ -2,17 +2,12 @@ import { stat } from 'node:fs/promises';
 import { basename, dirname } from 'node:path';
 import { OnebatchError } from '../harness/errors.js';
 import { ledgerName, readLedger } from '../results/ledger.js';
-import { readManifest } from '../results/manifest.js';
+import { type Provenance, readManifest } from '../results/manifest.js';
 import type { ReadLedger } from '../results/merge-ledgers.js';
-import type { PlanOrder } from '../results/scores.js';
-import { reportedLabels, type SweepPlan, sweepPlanOf } from '../results/sweep/sweep-plan.js';
 
-/** A ledger with what its manifest, where there is one, says of its plan. */
+/** A ledger with what its manifest, where there is one, says of its making. */
 export interface FoundLedger extends ReadLedger {
-  readonly seed?: number;
-  readonly order?: PlanOrder;
-  readonly looks?: readonly number[] | undefined;
-  readonly sweeps?: SweepPlan | undefined;
+  readonly provenance: Provenance | undefined;
 }
 
 /**
@@ -27,23 +22,7 @@ export async function readLedgers(places: readonly string[]): Promise<FoundLedge
   for (const place of places) {
     const folder = await folderOf(place);
     const { rows, seconds } = await readLedger(folder);
-    const plan = (await readManifest(folder))?.plan;
-    ledgers.push({
-      place,
-      rows,
-      seconds,
-      ...(plan === undefined
-        ? {}
-        : {
-            seed: plan.seed,
-            looks: plan.looks,
-            sweeps: sweepPlanOf(plan),
-            order: {
-              tasks: plan.tasks.map(({ label }) => label),
-              methods: reportedLabels(plan),
-            },
-          }),
-    });
+    ledgers.push({ place, rows, seconds, provenance: await readManifest(folder) });
   }
   return ledgers;
 }
