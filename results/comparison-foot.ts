@@ -4,7 +4,6 @@ import type { Overall } from './overall.js';
 import type { Ranks } from './ranks.js';
 import type { Against, AgainstReference, ReferenceBlock } from './reference.js';
 import type { Section } from './section.js';
-import { studentUpTo } from './statistics/difference-interval.js';
 import { defaultFlips, exactUpTo } from './statistics/sign-flip.js';
 import { plannedPower, smallestAdjustedP } from './verdict.js';
 
@@ -40,7 +39,6 @@ function describeDifference(
   );
   const words = [
     ...(kinds.has('student-t') ? ["Student's t"] : []),
-    ...(kinds.has('bca') ? [`BCa bootstrap beyond ${studentUpTo} pairs`] : []),
     ...(kinds.has('stratified-t') ? ["over all tasks t with Satterthwaite's degrees of freedom"] : []),
   ];
   const intervals =

@@ -4,12 +4,11 @@ import { countLooks } from './decide-at-looks.js';
 import { intervalLevel } from './estimate.js';
 import { type Foot, writeFoot } from './foot.js';
 import { type Notes, takeNotes } from './notes.js';
-import { type Overall, scoreOverall, Totals } from './overall.js';
+import { defaultResamples, type Overall, scoreOverall, Totals } from './overall.js';
 import { defaultMargin, type PairedScore } from './paired.js';
 import { type Against, chooseReference } from './reference.js';
 import { type PlanOrder, sortCells } from './scores.js';
 import { type Section, scoreSection } from './section.js';
-import { defaultResamples } from './statistics/bca.js';
 import type { SweepChoices } from './sweep.js';
 import { defaultAlpha } from './verdict.js';
 
@@ -46,7 +45,7 @@ export interface CompareOptions {
   readonly seed?: number;
   /** The plan's order of tasks and methods; by name unless given. */
   readonly order?: PlanOrder;
-  /** Resamples of each bootstrap; 10,000 unless given. */
+  /** Resamples of each interquartile mean; 2,000 unless given. */
   readonly resamples?: number;
   /** The reference method's label; `repeat-best` unless given, or the first where the ledger does not hold that. */
   readonly against?: string | undefined;

@@ -2,7 +2,6 @@ import type { Stream } from '../harness/random.js';
 import { type TaskPairs, testTaskDifferences } from './paired.js';
 import type { SectionCells } from './scores.js';
 import { type LookEvidence, type SequentialVerdict, sequentialRule } from './sequential.js';
-import { Resampler } from './statistics/resampler.js';
 import { SignPatterns } from './statistics/sign-flip.js';
 
 /** Looks at verdicts while seeds were added. */
@@ -31,8 +30,7 @@ export function decideAtLooks(
 ): SequentialVerdict[] {
   if (made === 0) return methods.map(() => ({ verdict: 'undecided' }));
   const stream = options.stream.split('looks');
-  // No interval is looked at: a single resample is enough.
-  const shared = { patterns: new SignPatterns(stream, flips), resampler: new Resampler(1, stream) };
+  const patterns = new SignPatterns(stream, flips);
   const most = planned.at(-1)!;
   const rule = sequentialRule({ information: planned.map((seeds) => seeds / most), alpha: options.alpha });
   const look = (tasks: readonly TaskPairs[], seeds: number): LookEvidence => {
@@ -40,7 +38,7 @@ export function decideAtLooks(
     const { p, mean, equivalenceP } = testTaskDifferences(differences, {
       margin: options.margin,
       stream,
-      shared,
+      patterns,
     });
     return { p, difference: mean, equivalenceP };
   };

@@ -1,6 +1,5 @@
 import type { Stream } from '../harness/random.js';
 import { meanInterval } from './statistics/mean-interval.js';
-import type { Resampler } from './statistics/resampler.js';
 import { stratifiedBootstraps } from './statistics/stratified-bootstrap.js';
 import { wilsonInterval } from './statistics/wilson.js';
 
@@ -8,10 +7,15 @@ import { wilsonInterval } from './statistics/wilson.js';
 export const intervalLevel = 0.95;
 
 /**
- * How an interval was made: `bca` and `student-t` are of a mean over seeds, `stratified-percentile` and `stratified-t`
- * are of an aggregate over tasks. `constant` says that all values are equal, so that both bounds are at the value.
+ * How an interval was made: `transformed-t` and `student-t` are of a mean over seeds, `stratified-t` is of a mean of
+ * task means, and `stratified-expanded-percentile` of an interquartile mean over tasks. `constant` says that all values are equal, so that both bounds are at the value.
  */
-export type IntervalMethod = 'bca' | 'student-t' | 'constant' | 'stratified-percentile' | 'stratified-t';
+export type IntervalMethod =
+  | 'transformed-t'
+  | 'student-t'
+  | 'constant'
+  | 'stratified-t'
+  | 'stratified-expanded-percentile';
 
 /** An interval, with what made it. */
 export interface Interval {
@@ -32,8 +36,8 @@ export interface Estimate {
 
 /** What gathers a score, task after task. */
 export interface Collector {
-  /** Takes a task's scores; `replicates` gives the means of their resamples, minus their mean. */
-  add(values: readonly number[], replicates: () => Float64Array): void;
+  /** Takes a task's scores. */
+  add(values: readonly number[]): void;
 }
 
 /** A share of trials with Wilson's interval. */
@@ -47,20 +51,15 @@ export interface ShareEstimate {
 }
 
 /**
- * Mean of one score over cells, (n) with n ≥ 1, and its 95 % interval: BCa from 8 cells on, Student's t below, none
- * for one cell.
+ * Mean of one score over cells, (n) with n ≥ 1, and its 95 % interval: by Hall's transformation from
+ * 8 cells on, Student's t below, none for one cell.
  *
  * @param total collects the score over all tasks, where there are several.
  * @throws RangeError for no values or one that isn't finite.
  */
-export function estimateMean(values: readonly number[], resampler: Resampler, total?: Collector): Estimate {
-  let drawn: Float64Array | undefined;
-  const replicates = (): Float64Array => {
-    drawn ??= resampler.meanDeviations(values);
-    return drawn;
-  };
-  total?.add(values, replicates);
-  const found = meanInterval(values, { level: intervalLevel, replicates });
+export function estimateMean(values: readonly number[], total?: Collector): Estimate {
+  total?.add(values);
+  const found = meanInterval(values, { level: intervalLevel });
   const { mean: value, n, level, method } = found;
   if (method === 'none') return { value, n, interval: null };
   return { value, n, interval: { low: found.low, high: found.high, level, method } };
@@ -78,7 +77,7 @@ export function estimateShare<T>(cells: readonly T[], holds: (cell: T) => boolea
 
 /**
  * Interquartile means of one score over all cells, for several methods, with 95 % intervals by the bootstrap over seeds
- * within tasks (Agarwal et al. 2021). There is no interval when a task has a single cell: redrawing it would pretend
+ * within tasks (Agarwal et al. 2021), as expanded percentiles (Hesterberg 2015). There is no interval when a task has a single cell: redrawing it would pretend
  * that its score is certain.
  *
  * @param methods for each method its tasks, and for each task its scores.
@@ -91,16 +90,14 @@ export function estimateInterquartileMeans(
   const found = stratifiedBootstraps(methods, {
     aggregate: 'interquartile-mean',
     level: intervalLevel,
+    expanded: true,
     ...options,
   });
-  return found.map(({ estimate, low, high, level, runs, method }, i) => {
+  return found.map(({ estimate, low, high, level, runs }, i) => {
     const tasks = methods[i]!;
     if (tasks.some((cells) => cells.length < 2)) return { value: estimate, n: runs, interval: null };
     const constant = tasks.every((cells) => cells.every((score) => score === cells[0]));
-    return {
-      value: estimate,
-      n: runs,
-      interval: { low, high, level, method: constant ? 'constant' : method },
-    };
+    const method = constant ? 'constant' : 'stratified-expanded-percentile';
+    return { value: estimate, n: runs, interval: { low, high, level, method } };
   });
 }

@@ -1,10 +1,10 @@
 import type { OptimumKnowledge } from '../harness/task.js';
 import { describeComparison } from './comparison-foot.js';
 import type { Estimate, IntervalMethod } from './estimate.js';
-import { interquartileResamples, type Overall } from './overall.js';
+import type { Overall } from './overall.js';
 import type { Against } from './reference.js';
 import type { CountRange, Section } from './section.js';
-import { bootstrapFrom } from './statistics/mean-interval.js';
+import { transformedFrom } from './statistics/mean-interval.js';
 import { describeChoices } from './sweep/describe-choices.js';
 import type { SweepChoices } from './sweep.js';
 
@@ -102,21 +102,24 @@ function describeIntervals(
   ]);
   const aggregates =
     overall === null ? [] : [overall.bestVisible.mean, ...overall.methods.map((it) => it.lift)];
-  const iqmDraws = Math.min(resamples, interquartileResamples).toLocaleString('en-US');
-  const few = sections.some(({ methods }) => methods.some(({ cells }) => cells < bootstrapFrom));
+  const iqms = overall === null ? [] : overall.methods.map(({ best }) => best.interquartileMean);
   const draws = resamples.toLocaleString('en-US');
   const texts: [boolean, string][] = [
     [
-      uses(means, 'bca'),
-      `95 % intervals of means over seeds: BCa bootstrap, ${draws} resamples (Efron 1987).`,
+      uses(means, 'transformed-t'),
+      '95 % intervals of means over seeds: t transformed to allow for skewness (Hall 1992).',
     ],
     [
       uses(means, 'student-t'),
-      `95 % intervals of means over fewer than ${bootstrapFrom} seeds: Student's t, which supposes normal scores.`,
+      `95 % intervals of means over fewer than ${transformedFrom} seeds: Student's t, which supposes normal scores.`,
     ],
     [
-      uses(aggregates, 'stratified-percentile'),
-      `95 % intervals over all tasks: percentile bootstrap over the seeds within each task, ${draws} resamples, ${iqmDraws} for the IQM (Agarwal et al. 2021)${few ? `; too short with fewer than ${bootstrapFrom} seeds a task` : ''}.`,
+      uses(aggregates, 'stratified-t'),
+      "95 % intervals of means over all tasks: t with Satterthwaite's degrees of freedom (Satterthwaite 1946).",
+    ],
+    [
+      uses(iqms, 'stratified-expanded-percentile'),
+      `95 % intervals of the IQM: bootstrap over the seeds within each task (Agarwal et al. 2021), ${draws} resamples, expanded percentiles (Hesterberg 2015).`,
     ],
     [means.some((estimate) => estimate?.interval === null), 'No interval where there is a single cell.'],
     [

@@ -13,7 +13,6 @@ import {
   type Section,
   shareBeatingVisible,
 } from './section.js';
-import { Resampler } from './statistics/resampler.js';
 import { TaskMeans } from './task-means.js';
 
 /** A score over all tasks: as the mean of the tasks' means, and as the interquartile mean of all cells. */
@@ -56,8 +55,8 @@ export interface Overall {
   readonly ranks: Ranks | null;
 }
 
-/** Resamples of interquartile means, which cost more than means. */
-export const interquartileResamples = 2000;
+/** Resamples of interquartile means unless told otherwise. */
+export const defaultResamples = 2000;
 
 /** Collects scores task by task: see `ScoringOptions.total`. */
 export class Totals {
@@ -92,7 +91,7 @@ export function scoreOverall(
     cells.map((tasks) => tasks.map(({ rows }) => rows.map((row) => row[score])));
   const [bestVisible, ...interquartile] = estimateInterquartileMeans(
     [sections.map((section) => section.bestVisible), ...scores('best'), ...scores('median')],
-    { resamples: Math.min(options.resamples, interquartileResamples), stream },
+    { resamples: options.resamples, stream },
   );
   const methods = cells.map((tasks, i) => ({
     ...describeMethod(tasks, options),
@@ -116,10 +115,7 @@ export function scoreOverall(
       interquartileMean: bestVisible!,
     },
     methods: methods.sort((a, b) => b.best.mean.value - a.best.mean.value),
-    reference: holdAgainst(sections, options.against, {
-      stream,
-      resampler: new Resampler(options.resamples, stream),
-    }),
+    reference: holdAgainst(sections, options.against, stream),
     ranks: rankMethods(scored, options.against.score),
   };
 }

@@ -1,10 +1,9 @@
 import type { Stream } from '../harness/random.js';
 import type { CellRow } from '../harness/row.js';
 import { type Interval, intervalLevel } from './estimate.js';
-import { differenceInterval } from './statistics/difference-interval.js';
 import { testWithin } from './statistics/equivalence.js';
-import type { Resampler } from './statistics/resampler.js';
 import { type SignFlipTest, type SignPatterns, signFlipTest } from './statistics/sign-flip.js';
+import { stratifiedInterval } from './statistics/stratified-interval.js';
 import { type StratifiedMean, stratifiedMean } from './statistics/stratified-mean.js';
 
 /** What of a cell two methods can be compared by. */
@@ -56,8 +55,8 @@ export interface DifferenceOptions {
   /** Confidence of the interval; 0.95 unless given. */
   readonly level?: number;
   readonly stream: Stream;
-  /** What tests of the same number of pairs share, instead of drawing for each from the stream. */
-  readonly shared?: { readonly patterns: SignPatterns; readonly resampler: Resampler };
+  /** Sign patterns that tests share, instead of drawing for each from the stream. */
+  readonly patterns?: SignPatterns;
 }
 
 /** How often a method won, tied or lost by more than a margin. */
@@ -125,18 +124,18 @@ export function testDifferences(differences: readonly number[], options: Differe
  */
 export function testTaskDifferences(
   tasks: readonly (readonly number[])[],
-  { margin, level = intervalLevel, stream, shared }: DifferenceOptions,
+  { margin, level = intervalLevel, stream, patterns }: DifferenceOptions,
 ): DifferenceTest {
   if (!(margin > 0 && Number.isFinite(margin))) throw new RangeError(`margin must be above 0, got ${margin}`);
   const about = stratifiedMean(tasks);
   const weighted = tasks.flatMap((pairs) => pairs.map((pair) => pair / (tasks.length * pairs.length)));
-  const flips = signFlipTest(weighted, shared ?? { stream: stream.split('sign flips') });
+  const flips = signFlipTest(weighted, patterns ? { patterns } : { stream: stream.split('sign flips') });
   return {
     tasks: about.tasks,
     n: about.n,
     mean: about.mean,
     standardDeviation: about.standardDeviation ?? null,
-    interval: differenceInterval(tasks, { level, ...(shared ?? { stream: stream.split('interval') }) }),
+    interval: stratifiedInterval(tasks, { level }),
     p: flips.p,
     test: flips.method,
     monteCarloStandardError: flips.method === 'sign-flip-drawn' ? flips.monteCarloStandardError : 0,

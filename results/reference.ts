@@ -13,7 +13,6 @@ import {
   testTaskDifferences,
 } from './paired.js';
 import type { MethodCells, SectionCells } from './scores.js';
-import type { Resampler } from './statistics/resampler.js';
 import { SignPatterns } from './statistics/sign-flip.js';
 import { adjustAndDecide, type Decision } from './verdict.js';
 
@@ -86,12 +85,12 @@ export function chooseReference(sections: readonly SectionCells[], asked: string
 export function holdAgainst(
   sections: readonly SectionCells[],
   against: Against,
-  { stream, resampler }: { readonly stream: Stream; readonly resampler: Resampler },
+  stream: Stream,
 ): ReferenceBlock | null {
   const reference = cellsByMethod(sections).get(against.method);
   if (reference === undefined) return null;
   const ours = stream.split('against the reference');
-  const shared = { patterns: new SignPatterns(ours), resampler };
+  const patterns = new SignPatterns(ours);
   const compared = [...cellsByMethod(sections)].flatMap(([method, cells]) => {
     if (method === against.method) return [];
     const pairs = pairRows(
@@ -101,7 +100,7 @@ export function holdAgainst(
     );
     if (pairs.length === 0) return [];
     const differences = pairs.map((task) => task.differences);
-    const test = testTaskDifferences(differences, { margin: against.margin, stream: ours, shared });
+    const test = testTaskDifferences(differences, { margin: against.margin, stream: ours, patterns });
     return [{ method, settings: cells[0]!.settings, pairs, test }];
   });
   if (compared.length === 0) return null;

@@ -4,7 +4,6 @@ import type { OptimumKnowledge } from '../harness/task.js';
 import { type Estimate, estimateMean, estimateShare, type ShareEstimate } from './estimate.js';
 import { type Against, holdAgainst, type ReferenceBlock } from './reference.js';
 import type { MethodCells, SectionCells } from './scores.js';
-import { Resampler } from './statistics/resampler.js';
 import type { TaskMeans } from './task-means.js';
 
 /** One method on one task behind one curtain. */
@@ -66,18 +65,9 @@ export interface ScoringOptions {
   readonly total?: (method: string | null, score: ScoreName) => TaskMeans;
 }
 
-interface SectionOptions extends ScoringOptions {
-  readonly resampler: Resampler;
-}
-
-/**
- * Means and intervals of one task behind one curtain. All bootstraps of a section draw the same seeds, so that methods
- * with the same scores have the same intervals.
- */
+/** Means and intervals of one task behind one curtain. */
 export function scoreSection(cells: SectionCells, options: ScoringOptions): Section {
   const stream = options.stream.split(cells.task, cells.curtain);
-  const resampler = new Resampler(options.resamples, stream);
-  const ours: SectionOptions = { ...options, stream, resampler };
   const rows = cells.methods.flatMap((method) => method.rows);
   return {
     task: cells.task,
@@ -88,11 +78,11 @@ export function scoreSection(cells: SectionCells, options: ScoringOptions): Sect
     ),
     batch: range(rows.map((row) => row.batch)),
     visible: range(rows.map((row) => row.visible)),
-    bestVisible: estimateMean(cells.bestVisible, resampler, options.total?.(null, 'best')),
+    bestVisible: estimateMean(cells.bestVisible, options.total?.(null, 'best')),
     methods: cells.methods
-      .map((method) => scoreMethod(method, ours))
+      .map((method) => scoreMethod(method, options))
       .sort((a, b) => b.best.value - a.best.value),
-    reference: holdAgainst([cells], options.against, { stream, resampler }),
+    reference: holdAgainst([cells], options.against, stream),
   };
 }
 
@@ -121,9 +111,9 @@ export function meanDistinct(rows: readonly CellRow[]): number | null {
   return meanOrNull(rows.filter((row) => row.status === 'done').map((row) => row.distinct));
 }
 
-function scoreMethod({ method, settings, rows }: MethodCells, options: SectionOptions): MethodScores {
+function scoreMethod({ method, settings, rows }: MethodCells, options: ScoringOptions): MethodScores {
   const mean = (name: ScoreName, values: readonly number[]): Estimate =>
-    estimateMean(values, options.resampler, options.total?.(method, name));
+    estimateMean(values, options.total?.(method, name));
   const believed = beliefs(rows);
   return {
     method,

@@ -76,19 +76,14 @@ export function bcaInterval(
  * BCa interval of a mean; the same procedure as `bcaInterval`, with the resampling of values (n), n ≥ 2, written out.
  * Shifting all values shifts the interval, and scaling them scales it, to rounding.
  *
- * @param options.replicates means of resamples minus the mean of the values, from a `Resampler`, where they are
- * shared; otherwise `resamples` are drawn from `stream`.
  * @throws RangeError for fewer than two values, one that isn't finite, or a level outside (0, 1).
  */
-export function bcaMeanInterval(
-  values: ArrayLike<number>,
-  options: BcaOptions | { readonly level?: number; readonly replicates: Float64Array },
-): BcaInterval {
+export function bcaMeanInterval(values: ArrayLike<number>, options: BcaOptions): BcaInterval {
   const { level = 0.95 } = options;
   checkShare(level, 'level');
   checkValues(values, 'values', 2);
   const { n, mean } = moments(values);
-  const replicates = 'replicates' in options ? options.replicates.slice() : drawMeans(values, mean, options);
+  const replicates = drawMeans(values, mean, options);
   const deviations = Float64Array.from(values, (value) => value - mean);
   const size = deviations.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
   const jackknife = deviations.map((deviation) => -deviation / (n - 1));

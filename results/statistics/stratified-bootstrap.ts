@@ -2,6 +2,7 @@ import type { Stream } from '../../harness/random.js';
 import { type Aggregate, countedAggregate } from './aggregate.js';
 import { defaultResamples } from './bca.js';
 import { checkCount, checkShare } from './check-values.js';
+import { expandedLevel } from './expanded-level.js';
 import { quantileSorted } from './quantile.js';
 import { haveEqualShape, redrawRuns, stackTasks, type TaskRuns } from './task-runs.js';
 
@@ -12,12 +13,14 @@ export interface StratifiedOptions {
   readonly level?: number;
   /** Resamples drawn; 10,000 unless given. */
   readonly resamples?: number;
+  /** Whether the interval is widened as `expandedLevel` says; not unless given. */
+  readonly expanded?: boolean;
   readonly stream: Stream;
 }
 
 /** An aggregate over tasks with its percentile interval. */
 export interface StratifiedInterval {
-  readonly method: 'stratified-percentile';
+  readonly method: 'stratified-percentile' | 'stratified-expanded-percentile';
   readonly aggregate: Aggregate;
   /** The aggregate of the runs themselves. */
   readonly estimate: number;
@@ -72,7 +75,7 @@ export function stratifiedBootstraps(
 
 /** The intervals of methods with the same numbers of runs. */
 function bootstrapTogether(methods: readonly TaskRuns[], options: StratifiedOptions): StratifiedInterval[] {
-  const { level = 0.95, resamples = defaultResamples, stream } = options;
+  const { level = 0.95, resamples = defaultResamples, expanded = false, stream } = options;
   checkShare(level, 'level');
   checkCount(resamples, 'resamples');
   const aggregates = methods.map((runs) => countedAggregate(runs, options.aggregate));
@@ -84,13 +87,16 @@ function bootstrapTogether(methods: readonly TaskRuns[], options: StratifiedOpti
     for (let m = 0; m < methods.length; m++) replicates[m]![b] = aggregates[m]!(counts);
   }
   counts.fill(1);
+  const widened = expanded && counts.length > shape!.tasks;
+  const taken = widened ? expandedLevel(level, { values: counts.length, tasks: shape!.tasks }) : level;
   return methods.map((runs, m) => ({
-    method: 'stratified-percentile',
+    method: widened ? 'stratified-expanded-percentile' : 'stratified-percentile',
     aggregate: options.aggregate,
     estimate: aggregates[m]!(counts),
     tasks: runs.tasks,
     runs: counts.length,
-    ...percentiles(replicates[m]!, level),
+    ...percentiles(replicates[m]!, taken),
+    level,
   }));
 }
 

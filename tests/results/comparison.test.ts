@@ -42,10 +42,10 @@ describe('compareRows(rows, options): one task', () => {
     expect(interval!.high).toBeCloseTo(0.8 + (4.303 * 0.1) / Math.sqrt(3), 4);
   });
 
-  it('gives a BCa interval from 8 seeds on, and none for one seed', () => {
+  it('gives a transformed interval from 8 seeds on, and none for one seed', () => {
     const bests = [0.5, 0.6, 0.7, 0.8, 0.9, 0.4, 0.55, 0.62];
     const many = methodOf(compareRows(makeMethod('a', bests), { version, resamples: 200 }), 'a').best;
-    expect(many.interval!.method).toBe('bca');
+    expect(many.interval!.method).toBe('transformed-t');
     const one = compareRows(makeMethod('a', [0.5]), { version });
     expect(methodOf(one, 'a').best).toEqual({ value: 0.5, n: 1, interval: null });
     expect(one.sections[0]!.bestVisible.interval).toBeNull();
@@ -123,13 +123,22 @@ describe('compareRows(rows, options): all tasks', () => {
     expect(a.best.interquartileMean.value).toBeCloseTo(0.6, 12);
   });
 
-  it('gives intervals by the bootstrap within tasks, which stay inside the range of task means', () => {
+  it('gives means the interval of Satterthwaite: s²/n 0.0025 and 0.0967/4, 3.54 degrees of freedom', () => {
+    // √(0.0025 + 0.02417) / 2 = 0.0816 times t₀.₉₇₅ between the printed 3.182 (3) and 2.776 (4).
     const { low, high, method } = a.best.mean.interval!;
-    expect(method).toBe('stratified-percentile');
-    expect(low).toBeGreaterThanOrEqual((0.1 + 0.6) / 2);
-    expect(high).toBeLessThanOrEqual((0.2 + 1.3) / 2);
-    expect(low).toBeLessThan(0.5);
-    expect(high).toBeGreaterThan(0.5);
+    expect(method).toBe('stratified-t');
+    expect((low + high) / 2).toBeCloseTo(0.5, 12);
+    expect((high - low) / 2).toBeGreaterThan(0.0816 * 2.776);
+    expect((high - low) / 2).toBeLessThan(0.0817 * 3.182);
+  });
+
+  it('gives interquartile means the bootstrap within tasks', () => {
+    const { low, high, method } = a.best.interquartileMean.interval!;
+    expect(method).toBe('stratified-expanded-percentile');
+    expect(low).toBeGreaterThanOrEqual(0.1);
+    expect(high).toBeLessThanOrEqual(1.3);
+    expect(low).toBeLessThan(0.6);
+    expect(high).toBeGreaterThan(0.6);
   });
 
   it('gives no interval where a task has a single cell', () => {
@@ -229,7 +238,8 @@ describe('compareRows(rows, options): determinism', () => {
   });
 
   it('draws other resamples for another seed', () => {
-    const low = (seed: number) => methodOf(compareRows(rows, { ...options, seed }), 'a').best.interval!.low;
+    const low = (seed: number) =>
+      compareRows(rows, { ...options, seed }).overall!.methods[0]!.best.interquartileMean.interval!.low;
     expect(low(1)).not.toBe(low(0));
   });
 

@@ -41,9 +41,9 @@ describe('renderTerminal(comparison, options)', () => {
       All tasks
       2 tasks · mean of the tasks' means · IQM: interquartile mean of best over all cells
       method         best [95 %]            IQM [95 %]          median    lift  optimism  failed  seconds
-      careful       0.850 [0.783, 0.917]  0.850 [0.767, 0.917]   0.600  +0.240         –     0/6      2.0
-      best visible  0.610 [0.603, 0.617]  0.610 [0.602, 0.618]  ── line to beat ─────────────────────────
-      naive         0.450 [0.383, 0.517]  0.450 [0.367, 0.533]   0.200  -0.160    +0.575     1/6      2.0
+      careful       0.850 [0.737, 0.963]  0.850 [0.750, 0.950]   0.600  +0.240         –     0/6      2.0
+      best visible  0.610 [0.599, 0.621]  0.610 [0.600, 0.620]  ── line to beat ─────────────────────────
+      naive         0.450 [0.337, 0.563]  0.450 [0.350, 0.550]   0.200  -0.160    +0.575     1/6      2.0
 
       Against careful, by best:
       method   difference [95 %]                p  verdict    w/t/l  rank     beat visible
@@ -57,8 +57,10 @@ describe('renderTerminal(comparison, options)', () => {
       failed    cells that failed, of how many; a cell is one method on one task with one seed
       seconds   wall-clock time of one cell, mean
       95 % intervals of means over fewer than 8 seeds: Student's t, which supposes normal scores.
-      95 % intervals over all tasks: percentile bootstrap over the seeds within each task, 2,000
-        resamples, 2,000 for the IQM (Agarwal et al. 2021); too short with fewer than 8 seeds a task.
+      95 % intervals of means over all tasks: t with Satterthwaite's degrees of freedom (Satterthwaite
+        1946).
+      95 % intervals of the IQM: bootstrap over the seeds within each task (Agarwal et al. 2021), 2,000
+        resamples, expanded percentiles (Hesterberg 2015).
       difference: best minus that of careful, paired by task, curtain and seed, 3 pairs a task, 6 pairs
         over all tasks; 95 % intervals, each for its own method and not corrected for their number:
         Student's t, over all tasks t with Satterthwaite's degrees of freedom.
