@@ -45,7 +45,8 @@ async function changed(
   const [columns = [], ...lines] = await readCsv(await readFile(join(root, 'before', 'ledger.csv'), 'utf8'));
   const rows = lines.flatMap((values) => {
     const row = Object.fromEntries(columns.map((column, i) => [column, values[i] ?? '']));
-    return change(row) ?? [];
+    const kept = change(row);
+    return kept === undefined ? [] : [kept];
   });
   await writeFile(join(root, folder, 'ledger.csv'), await writeCsv(columns, rows));
   return folder;
