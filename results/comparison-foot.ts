@@ -86,7 +86,12 @@ function describeRanks(ranks: Ranks | null): string {
     ? `, more than any two of ${methods.length} can differ by: too few tasks to tell methods apart by rank`
     : '';
   const without = leftOut.length === 0 ? '' : ` Not ranked, for they lack tasks: ${leftOut.join(', ')}.`;
-  return `rank: mean over ${tasks} tasks, 1 is best, ties averaged; Friedman's test, F(${degreesOfFreedom.join(', ')}) = ${statistic} by Iman & Davenport (1980), p ${asEquation(p)}; ranks closer than the critical difference can't be told apart at 5 % (Nemenyi 1963; Demšar 2006), here ${criticalDifference.toFixed(2)}${few}.${without}`;
+  return `rank: mean over ${tasks} tasks, 1 is best, ties averaged; Friedman's test, F(${degreesOfFreedom.join(', ')}) = ${statistic} by Iman & Davenport (1980), p ${asEquation(p)}; ranks closer than the critical difference can't be told apart at 5 % (Nemenyi 1963; Demšar 2006), here ${criticalDifference.toFixed(2)}${few}. ${describeGroups(ranks)}${without}`;
+}
+
+function describeGroups({ groups }: Ranks): string {
+  if (groups.length === 0) return 'All mean ranks differ by more than that.';
+  return `Not told apart: ${groups.map((group) => group.join(', ')).join('; ')}.`;
 }
 
 /** A p as in "= 0.031" or "< 0.001". */

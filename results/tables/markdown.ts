@@ -94,7 +94,6 @@ function overallBlocks(comparison: Comparison, overall: Overall): string[] {
     ),
     ...referenceBlocks(overall.reference, methods, overall.ranks),
     escapeMarkdown(describeTable(comparison, overall)),
-    ...(overall.ranks === null ? [] : [describeGroups(overall.ranks)]),
   ];
 }
 
@@ -129,12 +128,6 @@ function referenceBlocks(
     ],
   );
   return [`Against ${escapeMarkdown(block.method)}, by ${block.score}:`, pipeTable(header, rows)];
-}
-
-function describeGroups({ groups }: Ranks): string {
-  const lists = groups.map((group) => group.map(escapeMarkdown).join(', '));
-  if (lists.length === 0) return 'All mean ranks differ by more than the critical difference.';
-  return `Ranks that can't be told apart: ${lists.join('; ')}.`;
 }
 
 function sharedCells(scores: MethodScores | OverallScores): string[] {

@@ -75,8 +75,6 @@ describe('renderMarkdown(comparison)', () => {
 
       True scores, normalized: 0 is the worst design of the pool, 1 the top; brackets hold 95 % intervals. 3 seeds a task. difference: best minus that of careful on the same seed, 6 pairs. p: sign-flip test, Holm-corrected for 1 test. verdict at 0.05, margin ±0.02; in parentheses the seeds a task that would decide at 80 % power. 1 of 12 cells failed, counted as batches of the worst visible design. curtains: ceiling=0.5. top: published optimum or best known score. onebatch 0.1.0.
 
-      Ranks that can't be told apart: careful, naive.
-
       ## Fooled by its own model
 
       - naive believed its batch 0.60 \\[0.35, 0.85\\] above the truth on nk(20, 3), and its best design fell 0.11 short of the best visible one on average.
@@ -104,7 +102,7 @@ describe('renderMarkdown(comparison)', () => {
       - verdict: helps or hurts: p \\< 0.05 and the interval excludes 0; no real difference: within ±0.02 by two one-sided t tests (Schuirmann 1987), Holm-corrected as a family of their own, p \\< 0.05; undecided: neither, with the seeds a task that would decide at 80 % power if more are like these.
       - w/t/l: pairs won, tied and lost, with the difference above, within and below ±0.02; beat visible: cells with a design better than the best visible one (Wilson 1927).
       - 3 pairs and 1 test allow no p below 0.250: to help or hurt on a single task takes 6 seeds at least.
-      - rank: mean over 2 tasks, 1 is best, ties averaged; Friedman's test, F(1, 1) = infinite by Iman \\& Davenport (1980), p = 0.500; ranks closer than the critical difference can't be told apart at 5 % (Nemenyi 1963; Demšar 2006), here 1.39, more than any two of 2 can differ by: too few tasks to tell methods apart by rank.
+      - rank: mean over 2 tasks, 1 is best, ties averaged; Friedman's test, F(1, 1) = infinite by Iman \\& Davenport (1980), p = 0.500; ranks closer than the critical difference can't be told apart at 5 % (Nemenyi 1963; Demšar 2006), here 1.39, more than any two of 2 can differ by: too few tasks to tell methods apart by rank. Not told apart: careful, naive.
       - 1 of 12 cells failed. A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.
       - Made by onebatch 0.1.0.
       "

@@ -75,7 +75,7 @@ describe('renderTerminal(comparison, options)', () => {
       rank: mean over 2 tasks, 1 is best, ties averaged; Friedman's test, F(1, 1) = infinite by Iman &
         Davenport (1980), p = 0.500; ranks closer than the critical difference can't be told apart at 5 %
         (Nemenyi 1963; Demšar 2006), here 1.39, more than any two of 2 can differ by: too few tasks to
-        tell methods apart by rank.
+        tell methods apart by rank. Not told apart: careful, naive.
       1 of 12 cells failed. A failed cell counts as a batch of copies of the worst visible design; it
         stays in every mean but that of optimism.
       onebatch 0.1.0
