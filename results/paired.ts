@@ -67,25 +67,6 @@ export interface Outcomes {
 }
 
 /**
- * Differences of one method to another in the same ledger, by task, curtain and seed. Tasks where they share no seed
- * are left out.
- *
- * @param method label; the rows must hold it with one setting only, or a seed would stand for several cells.
- */
-export function pairDifferences(
-  rows: readonly CellRow[],
-  method: string,
-  reference: string,
-  score: PairedScore,
-): TaskPairs[] {
-  return pairRows(
-    rows.filter((row) => row.method === method),
-    rows.filter((row) => row.method === reference),
-    score,
-  );
-}
-
-/**
  * Differences of two sets of rows, of one method each, by task, curtain and seed, in the order in which the candidate's
  * tasks come. Tasks where they share no seed are left out.
  *
@@ -106,11 +87,6 @@ export function pairRows(
     const differences = seeds.map((seed) => mine.get(seed)![score] - other.get(seed)![score]);
     return [{ task, curtain, seeds, differences, unpaired: mine.size + other.size - 2 * seeds.length }];
   });
-}
-
-/** Paired differences of one task, (n) with n ≥ 1: mean, interval, and tests of "no difference" and "small difference". */
-export function testDifferences(differences: readonly number[], options: DifferenceOptions): DifferenceTest {
-  return testTaskDifferences([differences], options);
 }
 
 /**
