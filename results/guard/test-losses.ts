@@ -86,7 +86,7 @@ export function testLosses(
   const patterns = new SignPatterns(stream.split('signs'), Math.max(20_000, Math.ceil(10 / level)));
   const tests = subjects.map(({ sections }) => {
     const tasks = sections.map(({ differences }) => differences);
-    return testTaskDifferences(tasks, { margin, level: guardLevel, stream: stream.split('intervals') });
+    return testTaskDifferences(tasks, { margin, level: guardLevel, stream, patterns });
   });
   const losses = subjects.map(({ sections }) => lossPOf(sections, patterns));
   const lossPs = adjustChanged(losses, changed);
