@@ -8,38 +8,57 @@ import { cellId } from '../harness/row.js';
 import { setStage } from '../harness/stage.js';
 import { type BackendName, useBackend } from '../methods/surrogates/network/backend.js';
 import { describeBackend } from '../methods/surrogates/network/backend-description.js';
+import type { Comparison } from '../results/comparison.js';
+import { countVerdicts } from '../results/count-verdicts.js';
 import { keepsakeFolder, writeKeepsakes } from '../results/keepsakes.js';
 import { Ledger } from '../results/ledger.js';
 import type { Provenance } from '../results/manifest.js';
+import { renderTerminal } from '../results/tables/terminal.js';
 import { catalogue } from './catalogue.js';
 import { claimFolder } from './claim-folder.js';
 import { type ExitCode, exitCodes } from './exit-codes.js';
 import { version } from './package-root.js';
 import { describeSeconds, startProgress } from './progress.js';
 import { type RehearseArguments, readRehearsal } from './rehearse-options.js';
-import { remark, say } from './terminal.js';
+import { inStyle, remark, say } from './terminal.js';
 import { writeComparison } from './write-comparison.js';
 
 const workerFile = new URL('./worker.js', import.meta.url);
 
 /** Runs a plan, or goes on with it, and ends with its comparison. */
 export async function rehearse(given: RehearseArguments): Promise<ExitCode> {
-  const { plan, out, workers } = await readRehearsal(given, catalogue);
+  const { plan, out, workers, sameCells } = await readRehearsal(given, catalogue);
   await useBackend(plan.backend as BackendName);
   tryStages(plan);
   await claimFolder(out, provenanceOf(plan));
   if (plan.keep.length > 0) await mkdir(join(out, keepsakeFolder), { recursive: true });
   const ledger = await Ledger.open(out);
+  const interruption = listenForInterruption();
   try {
-    const whole = await runCells(plan, out, ledger, workers);
-    if (!whole) return exitCodes.interrupted;
-    await ledger.sort(ledgerOrder(plan));
-    const comparison = await writeComparison(out, plan, ledger);
-    say(comparison);
+    const comparison = await runRounds(plan, {
+      out,
+      ledger,
+      workers,
+      sameCells,
+      signal: interruption.signal,
+    });
+    if (comparison === undefined) return exitCodes.interrupted;
+    say(renderTerminal(comparison, { style: inStyle() }));
     return ledger.rows.some((row) => row.status === 'failed') ? exitCodes.cellsFailed : exitCodes.done;
   } finally {
+    interruption.stop();
     await ledger.close();
   }
+}
+
+/** What the rounds of a rehearsal share. */
+interface Course {
+  readonly out: string;
+  readonly ledger: Ledger;
+  readonly workers: number;
+  readonly sameCells: boolean;
+  /** Aborted when a person interrupts. */
+  readonly signal: AbortSignal;
 }
 
 function provenanceOf(plan: Plan): Provenance {
@@ -58,13 +77,32 @@ function tryStages(plan: Plan): void {
   }
 }
 
-/** Runs what is missing; `false` when a person interrupted it. */
-async function runCells(plan: Plan, out: string, ledger: Ledger, workers: number): Promise<boolean> {
-  const finished = new Set(ledger.rows.map(cellId));
+/** Runs the plan's seeds, or rounds of them until every verdict is reached; nothing when a person interrupted it. */
+async function runRounds(plan: Plan, course: Course): Promise<Comparison | undefined> {
+  const { out, ledger, sameCells, signal } = course;
+  const order = ledgerOrder(plan);
+  const { looks = [plan.seeds] } = plan;
+  let comparison: Comparison | undefined;
+  for (const [round, seeds] of looks.entries()) {
+    await runCells({ ...plan, seeds }, course);
+    if (signal.aborted) return undefined;
+    await ledger.sort(order);
+    comparison = await writeComparison(out, { plan, sameCells }, ledger);
+    if (plan.looks === undefined) break;
+    const { reached, all } = countVerdicts(comparison);
+    remark(`Look ${round + 1} of ${looks.length}, at ${seeds} seeds: ${reached} of ${all} verdicts reached.`);
+    if (reached === all) break;
+  }
+  return comparison;
+}
+
+/** Runs what is missing, until a person interrupts. */
+async function runCells(plan: Plan, { out, ledger, workers, signal }: Course): Promise<void> {
+  const finished = new Set(ledger.rows.filter(({ seed }) => seed <= plan.seeds).map(cellId));
   const total = countCells(plan);
   if (finished.size === total) {
-    remark(`All ${total} cells are in ${out} already.`);
-    return true;
+    if (plan.looks === undefined) remark(`All ${total} cells are in ${out} already.`);
+    return;
   }
   const before = finished.size === 0 ? '' : `, ${finished.size} of them done before`;
   const crewSize = Math.min(workers, total - finished.size);
@@ -72,7 +110,8 @@ async function runCells(plan: Plan, out: string, ledger: Ledger, workers: number
     `Rehearsing "${plan.name}": ${total} cells${before}, on ${crewSize} worker${crewSize === 1 ? '' : 's'}, into ${out}`,
   );
   const crew = openCrew(workerFile, crewSize);
-  const interruption = listenForInterruption(() => void crew.close());
+  const dismiss = () => void crew.close();
+  signal.addEventListener('abort', dismiss);
   const progress = startProgress(total, finished.size);
   const start = performance.now();
   try {
@@ -81,7 +120,7 @@ async function runCells(plan: Plan, out: string, ledger: Ledger, workers: number
       catalogue,
       crew,
       finished,
-      signal: interruption.signal,
+      signal,
       onFinished: async ({ stage, verdict, seconds }) => {
         await writeKeepsakes(out, plan.keep, stage.space, verdict);
         await ledger.append(verdict.row, seconds);
@@ -90,17 +129,14 @@ async function runCells(plan: Plan, out: string, ledger: Ledger, workers: number
     });
   } finally {
     progress.stop();
-    interruption.stop();
+    signal.removeEventListener('abort', dismiss);
     await crew.close();
   }
-  if (interruption.signal.aborted) {
-    remark(
-      `Interrupted: ${ledger.rows.length} of ${total} cells are in ${out}; the same command goes on from there.`,
-    );
-    return false;
-  }
-  remark(`Done in ${describeSeconds((performance.now() - start) / 1000)}.`);
-  return true;
+  remark(
+    signal.aborted
+      ? `Interrupted: ${ledger.rows.length} of ${total} cells are in ${out}; the same command goes on from there.`
+      : `Done in ${describeSeconds((performance.now() - start) / 1000)}.`,
+  );
 }
 
 /** Tasks, curtains and methods in the plan's order, then seeds. */
@@ -116,13 +152,9 @@ function ledgerOrder(plan: Plan): string[] {
 }
 
 /** Turns Ctrl-C, a hang-up or a request to end into an abort signal. */
-function listenForInterruption(onInterruption: () => void): { signal: AbortSignal; stop: () => void } {
+function listenForInterruption(): { signal: AbortSignal; stop: () => void } {
   const controller = new AbortController();
-  const interrupt = () => {
-    if (controller.signal.aborted) return;
-    controller.abort();
-    onInterruption();
-  };
+  const interrupt = () => controller.abort();
   const signals = ['SIGINT', 'SIGTERM', 'SIGHUP'] as const;
   for (const signal of signals) process.on(signal, interrupt);
   return {

@@ -8,6 +8,11 @@ export function remark(text: string): void {
   process.stderr.write(`${text}\n`);
 }
 
+/** Whether standard output is a terminal that wants bold and dim text. */
+export function inStyle(): boolean {
+  return process.stdout.isTTY === true && !process.env['NO_COLOR'];
+}
+
 /** Ends the program without a word when who reads its standard output has gone, as `onebatch list | head` does. */
 export function endQuietlyWithoutReader(): void {
   process.stdout.on('error', (error: NodeJS.ErrnoException) => {

@@ -14,7 +14,7 @@ export function writeCsv(
   });
 }
 
-/** The lines of a CSV text as lists of values, its first line included. */
+/** The lines of a CSV text as lists of values, its first line included; a first value of white space alone is empty. */
 export function readCsv(text: string): Promise<string[][]> {
   return new Promise((resolve, reject) => {
     const rows: string[][] = [];

@@ -1,8 +1,12 @@
 import type { OptimumKnowledge } from '../harness/task.js';
+import { describeComparison } from './comparison-foot.js';
 import type { Estimate, IntervalMethod } from './estimate.js';
 import type { Overall } from './overall.js';
+import type { Against } from './reference.js';
 import type { CountRange, Section } from './section.js';
-import { bootstrapFrom } from './statistics/mean-interval.js';
+import { transformedFrom } from './statistics/mean-interval.js';
+import { describeChoices } from './sweep/describe-choices.js';
+import type { SweepChoices } from './sweep.js';
 
 /** What a column of the tables means. */
 export interface ColumnMeaning {
@@ -26,10 +30,12 @@ export interface Foot {
   readonly seeds: CountRange;
   readonly curtains: readonly string[];
   readonly tops: readonly TopKnown[];
+  /** How settings were chosen, and what that leaves to report; empty where there was nothing to choose. */
+  readonly sweeps: readonly string[];
   /** How the intervals were made; empty where one seed allows none. */
   readonly intervals: readonly string[];
-  /** What the intervals do not say. */
-  readonly caution: string;
+  /** How methods were held against the reference; empty where there was none to compare. */
+  readonly comparison: readonly string[];
   readonly failures: string;
   readonly version: string;
 }
@@ -55,7 +61,12 @@ const columns: readonly ColumnMeaning[] = [
 export function writeFoot(
   sections: readonly Section[],
   overall: Overall | null,
-  options: { readonly version: string; readonly resamples: number },
+  options: {
+    readonly version: string;
+    readonly resamples: number;
+    readonly against: Against;
+    readonly sweeps: SweepChoices | null;
+  },
 ): Foot {
   const seeds = sections.map((section) => section.seeds);
   return {
@@ -65,13 +76,19 @@ export function writeFoot(
     seeds: { least: Math.min(...seeds), most: Math.max(...seeds) },
     curtains: [...new Set(sections.map(({ curtain }) => curtain))],
     tops: sections.map(({ task, curtain, top }) => ({ task, curtain, known: top })),
+    sweeps: options.sweeps === null ? [] : describeChoices(options.sweeps),
     intervals: describeIntervals(sections, overall, options.resamples),
-    caution:
-      'Each interval is of one method: they are not paired tests between methods, and are not corrected for the number of methods.',
-    failures:
-      'A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.',
+    comparison: describeComparison(sections, overall, options.against),
+    failures: describeFailures(sections),
     version: options.version,
   };
+}
+
+function describeFailures(sections: readonly Section[]): string {
+  const all = sections.flatMap(({ methods }) => methods);
+  const failures = all.reduce((sum, scores) => sum + scores.failures, 0);
+  const cells = all.reduce((sum, scores) => sum + scores.cells, 0);
+  return `${failures} of ${cells} cells failed. A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.`;
 }
 
 function describeIntervals(
@@ -85,20 +102,24 @@ function describeIntervals(
   ]);
   const aggregates =
     overall === null ? [] : [overall.bestVisible.mean, ...overall.methods.map((it) => it.lift)];
-  const few = sections.some(({ methods }) => methods.some(({ cells }) => cells < bootstrapFrom));
+  const iqms = overall === null ? [] : overall.methods.map(({ best }) => best.interquartileMean);
   const draws = resamples.toLocaleString('en-US');
   const texts: [boolean, string][] = [
     [
-      uses(means, 'bca'),
-      `95 % intervals of means over seeds: BCa bootstrap, ${draws} resamples (Efron 1987).`,
+      uses(means, 'transformed-t'),
+      '95 % intervals of means over seeds: t transformed to allow for skewness (Hall 1992).',
     ],
     [
       uses(means, 'student-t'),
-      `95 % intervals of means over fewer than ${bootstrapFrom} seeds: Student's t, which supposes normal scores.`,
+      `95 % intervals of means over fewer than ${transformedFrom} seeds: Student's t, which supposes normal scores.`,
     ],
     [
-      uses(aggregates, 'stratified-percentile'),
-      `95 % intervals over all tasks: percentile bootstrap over the seeds within each task, ${draws} resamples (Agarwal et al. 2021)${few ? `; too short with fewer than ${bootstrapFrom} seeds a task` : ''}.`,
+      uses(aggregates, 'stratified-t'),
+      "95 % intervals of means over all tasks: t with Satterthwaite's degrees of freedom (Satterthwaite 1946).",
+    ],
+    [
+      uses(iqms, 'stratified-expanded-percentile'),
+      `95 % intervals of the IQM: bootstrap over the seeds within each task (Agarwal et al. 2021), ${draws} resamples, expanded percentiles (Hesterberg 2015).`,
     ],
     [means.some((estimate) => estimate?.interval === null), 'No interval where there is a single cell.'],
     [

@@ -40,3 +40,8 @@ export function formatSeconds(seconds: number): string {
 export function formatCount(count: number): string {
   return Number(count.toFixed(1)) % 1 === 0 ? count.toFixed(0) : count.toFixed(1);
 }
+
+/** A p-value for reading: 0.034, <0.001; 1.000 stays. */
+export function formatP(p: number): string {
+  return p < 0.001 ? '<0.001' : p.toFixed(3);
+}

@@ -1,3 +1,4 @@
+import { existsSync } from 'node:fs';
 import { type FileHandle, open, readFile, rename, writeFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import { OnebatchError } from '../harness/errors.js';
@@ -125,7 +126,9 @@ export async function readLedger(folder: string): Promise<{ rows: CellRow[]; sec
   return { rows, seconds: await readTimings(join(folder, timingsName)) };
 }
 
+/** Nothing depends on times: a ledger that was passed on without them is whole. */
 async function readTimings(file: string): Promise<Map<string, number>> {
+  if (!existsSync(file)) return new Map();
   const [, ...records] = await readLines(file);
   return new Map(
     records.map(([task = '', curtain = '', method = '', settings = '', seed, seconds]) => [

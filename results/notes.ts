@@ -1,6 +1,7 @@
 import type { Estimate } from './estimate.js';
 import { formatDifference, formatScore, supportedDecimals } from './format-number.js';
-import type { Overall, OverallScores } from './overall.js';
+import type { Overall } from './overall.js';
+import type { AgainstReference, ReferenceBlock } from './reference.js';
 import type { SectionCells } from './scores.js';
 import type { MethodScores, Section } from './section.js';
 
@@ -16,8 +17,8 @@ export interface Note {
 
 /** What stands out, by kind. */
 export interface Notes {
-  /** For each task, the methods whose interval of the lift lies above 0. */
-  readonly better: readonly Note[];
+  /** For each task, and for all together, the verdicts against the reference. */
+  readonly verdicts: readonly Note[];
   /** On each task the method that believed most above the truth, where that did not pay. */
   readonly fooled: readonly Note[];
   /** Methods with failed cells, and the reasons. */
@@ -40,9 +41,9 @@ export function takeNotes(
     return curtains > 1 ? `${section.task} behind ${section.curtain}` : section.task;
   };
   return {
-    better: [
-      ...sections.flatMap((section) => noteBetter(section, section.methods, place(section))),
-      ...noteBetter({ task: null, curtain: null }, overall?.methods ?? [], 'the mean of all tasks'),
+    verdicts: [
+      ...sections.flatMap((section) => noteVerdicts(section, section.reference, place(section))),
+      ...noteVerdicts({ task: null, curtain: null }, overall?.reference ?? null, 'the mean of all tasks'),
     ],
     fooled: sections.flatMap((section) => noteFooled(section, place(section))),
     failed: cells.flatMap((section) => noteFailed(section, place(section))),
@@ -53,16 +54,42 @@ export function takeNotes(
   };
 }
 
-function noteBetter(
+/** Verdicts of a table in one line, such as "against repeat-best on ackley: helps a +0.07 [+0.02, +0.12]; undecided: all others". */
+function noteVerdicts(
   where: { readonly task: string | null; readonly curtain: string | null },
-  methods: readonly (MethodScores | OverallScores)[],
+  reference: ReferenceBlock | null,
   place: string,
 ): Note[] {
-  const better = methods.filter(({ lift }) => lift.interval !== null && lift.interval.low > 0);
-  if (better.length === 0) return [];
-  const list = better.map(({ method, lift }) => `${method} ${describe(lift, formatDifference)}`).join(', ');
-  const text = `interval of the lift above 0 on ${place}: ${list}`;
-  return [{ task: where.task, curtain: where.curtain, methods: better.map(({ method }) => method), text }];
+  if (reference === null) return [];
+  const { methods } = reference;
+  const decided = (['helps', 'hurts', 'no real difference'] as const).flatMap((verdict) => {
+    const those = methods.filter((it) => it.verdict === verdict);
+    const list = those.map(({ method, difference }) => `${method} ${describe(difference, formatDifference)}`);
+    return those.length === 0
+      ? []
+      : [`${verdict}${verdict === 'no real difference' ? ':' : ''} ${list.join(', ')}`];
+  });
+  const open = methods.filter(({ verdict }) => verdict === 'undecided');
+  const text = [...decided, ...noteUndecided(open, methods.length)].join('; ');
+  return [
+    {
+      task: where.task,
+      curtain: where.curtain,
+      methods: methods.map(({ method }) => method),
+      text: `against ${reference.method} on ${place}: ${text}`,
+    },
+  ];
+}
+
+function noteUndecided(open: readonly AgainstReference[], all: number): string[] {
+  if (open.length === 0) return [];
+  const needed = open.flatMap(({ method, seedsNeeded }) =>
+    seedsNeeded?.kind === 'about' ? [{ method, seeds: seedsNeeded.seeds }] : [],
+  );
+  const [nearest] = needed.sort((a, b) => a.seeds - b.seeds);
+  const hint =
+    nearest === undefined ? '' : `, the nearest (${nearest.method}) at about ${nearest.seeds} seeds`;
+  return [`undecided: ${open.length === all ? `all ${all}` : `${open.length} of ${all}`}${hint}`];
 }
 
 /** An estimate with its interval, as in "0.21 [0.15, 0.26]". */

@@ -1,5 +1,6 @@
-import type { CellRow } from '../harness/row.js';
-import { type Estimate, estimateOverTasks } from './estimate.js';
+import { type Estimate, estimateInterquartileMeans, type ShareEstimate } from './estimate.js';
+import { type Ranks, rankMethods } from './ranks.js';
+import { holdAgainst, type ReferenceBlock } from './reference.js';
 import type { MethodCells, SectionCells } from './scores.js';
 import {
   beliefs,
@@ -7,9 +8,12 @@ import {
   meanDistinct,
   meanOrNull,
   meanSeconds,
+  type ScoreName,
   type ScoringOptions,
+  type Section,
+  shareBeatingVisible,
 } from './section.js';
-import type { Aggregate } from './statistics/aggregate.js';
+import { TaskMeans } from './task-means.js';
 
 /** A score over all tasks: as the mean of the tasks' means, and as the interquartile mean of all cells. */
 export interface Aggregates {
@@ -31,6 +35,8 @@ export interface OverallScores {
   readonly lift: Estimate;
   /** Mean of the tasks' means, over tasks and cells where a belief was stated; null where none was. */
   readonly optimism: Estimate | null;
+  /** Share of cells whose batch held a better design than the best visible one. */
+  readonly beatVisible: ShareEstimate;
   readonly distinct: number | null;
   /** Mean of the tasks' means. */
   readonly seconds: number | null;
@@ -43,72 +49,87 @@ export interface Overall {
   readonly bestVisible: Aggregates;
   /** From the highest mean best to the lowest. */
   readonly methods: readonly OverallScores[];
+  /** Every other method against the reference; null where there is none to compare. */
+  readonly reference: ReferenceBlock | null;
+  /** Null where fewer than two methods have cells on all tasks. */
+  readonly ranks: Ranks | null;
+}
+
+/** Resamples of interquartile means unless told otherwise. */
+export const defaultResamples = 2000;
+
+/** Collects scores task by task: see `ScoringOptions.total`. */
+export class Totals {
+  readonly #totals = new Map<string, TaskMeans>();
+
+  readonly collect = (method: string | null, score: ScoreName): TaskMeans => {
+    const key = JSON.stringify([method, score]);
+    const total = this.#totals.get(key) ?? new TaskMeans();
+    this.#totals.set(key, total);
+    return total;
+  };
 }
 
 /**
  * Aggregates over all tasks, with intervals over the seeds within each task. All bootstraps draw the same seeds, so
  * that methods with the same scores have the same intervals.
+ *
+ * @param scored the sections, whose scores `totals` collected.
  */
-export function scoreOverall(sections: readonly SectionCells[], options: ScoringOptions): Overall {
-  const ours = { ...options, stream: options.stream.split('all tasks') };
-  const methods = [...new Set(sections.flatMap((section) => section.methods.map(({ method }) => method)))];
+export function scoreOverall(
+  sections: readonly SectionCells[],
+  scored: readonly Section[],
+  totals: Totals,
+  options: ScoringOptions,
+): Overall {
+  const stream = options.stream.split('all tasks');
+  const labels = [...new Set(sections.flatMap((section) => section.methods.map(({ method }) => method)))];
+  const cells = labels.map((label) =>
+    sections.flatMap((section) => section.methods.filter(({ method }) => method === label)),
+  );
+  const scores = (score: 'best' | 'median') =>
+    cells.map((tasks) => tasks.map(({ rows }) => rows.map((row) => row[score])));
+  const [bestVisible, ...interquartile] = estimateInterquartileMeans(
+    [sections.map((section) => section.bestVisible), ...scores('best'), ...scores('median')],
+    { resamples: options.resamples, stream },
+  );
+  const methods = cells.map((tasks, i) => ({
+    ...describeMethod(tasks, options),
+    best: {
+      mean: totals.collect(labels[i]!, 'best').estimate(),
+      interquartileMean: interquartile[i]!,
+    },
+    median: {
+      mean: totals.collect(labels[i]!, 'median').estimate(),
+      interquartileMean: interquartile[labels.length + i]!,
+    },
+    lift: totals.collect(labels[i]!, 'lift').estimate(),
+    optimism: tasks.some(({ rows }) => beliefs(rows).length > 0)
+      ? totals.collect(labels[i]!, 'optimism').estimate()
+      : null,
+  }));
   return {
     sections: sections.length,
-    bestVisible: aggregates(
-      sections.map((section) => section.bestVisible),
-      ours,
-    ),
-    methods: methods
-      .map((method) =>
-        scoreMethod(
-          sections.flatMap((section) => section.methods.filter((it) => it.method === method)),
-          ours,
-        ),
-      )
-      .sort((a, b) => b.best.mean.value - a.best.mean.value),
+    bestVisible: {
+      mean: totals.collect(null, 'best').estimate(),
+      interquartileMean: bestVisible!,
+    },
+    methods: methods.sort((a, b) => b.best.mean.value - a.best.mean.value),
+    reference: holdAgainst(sections, options.against, stream),
+    ranks: rankMethods(scored, options.against.score),
   };
 }
 
-function scoreMethod(tasks: readonly MethodCells[], options: ScoringOptions): OverallScores {
+function describeMethod(tasks: readonly MethodCells[], options: ScoringOptions) {
   const rows = tasks.flatMap((task) => task.rows);
-  const each = (score: (row: CellRow) => number): number[][] => tasks.map((task) => task.rows.map(score));
-  const believed = tasks.map((task) => beliefs(task.rows)).filter((cells) => cells.length > 0);
   return {
     method: tasks[0]!.method,
     settings: tasks[0]!.settings,
     sections: tasks.length,
     cells: rows.length,
     failures: countFailures(rows),
-    best: aggregates(
-      each((row) => row.best),
-      options,
-    ),
-    median: aggregates(
-      each((row) => row.median),
-      options,
-    ),
-    lift: estimate(
-      each((row) => row.lift),
-      'mean-of-task-means',
-      options,
-    ),
-    optimism: believed.length === 0 ? null : estimate(believed, 'mean-of-task-means', options),
+    beatVisible: shareBeatingVisible(rows),
     distinct: meanDistinct(rows),
     seconds: meanOrNull(tasks.flatMap((task) => meanSeconds(task.rows, options.seconds) ?? [])),
   };
-}
-
-function aggregates(tasks: readonly (readonly number[])[], options: ScoringOptions): Aggregates {
-  return {
-    mean: estimate(tasks, 'mean-of-task-means', options),
-    interquartileMean: estimate(tasks, 'interquartile-mean', options),
-  };
-}
-
-function estimate(
-  tasks: readonly (readonly number[])[],
-  aggregate: Aggregate,
-  { resamples, stream }: ScoringOptions,
-): Estimate {
-  return estimateOverTasks(tasks, aggregate, { resamples, stream: stream.split('seeds drawn') });
 }

@@ -1,9 +1,9 @@
 import type { Stream } from '../harness/random.js';
 import type { CellRow } from '../harness/row.js';
 import { type Interval, intervalLevel } from './estimate.js';
-import { differenceInterval } from './statistics/difference-interval.js';
 import { testWithin } from './statistics/equivalence.js';
-import { type SignFlipTest, signFlipTest } from './statistics/sign-flip.js';
+import { type SignFlipTest, type SignPatterns, signFlipTest } from './statistics/sign-flip.js';
+import { stratifiedInterval } from './statistics/stratified-interval.js';
 import { type StratifiedMean, stratifiedMean } from './statistics/stratified-mean.js';
 
 /** What of a cell two methods can be compared by. */
@@ -55,6 +55,8 @@ export interface DifferenceOptions {
   /** Confidence of the interval; 0.95 unless given. */
   readonly level?: number;
   readonly stream: Stream;
+  /** Sign patterns that tests share, instead of drawing for each from the stream. */
+  readonly patterns?: SignPatterns;
 }
 
 /** How often a method won, tied or lost by more than a margin. */
@@ -62,25 +64,6 @@ export interface Outcomes {
   readonly wins: number;
   readonly ties: number;
   readonly losses: number;
-}
-
-/**
- * Differences of one method to another in the same ledger, by task, curtain and seed. Tasks where they share no seed
- * are left out.
- *
- * @param method label; the rows must hold it with one setting only, or a seed would stand for several cells.
- */
-export function pairDifferences(
-  rows: readonly CellRow[],
-  method: string,
-  reference: string,
-  score: PairedScore,
-): TaskPairs[] {
-  return pairRows(
-    rows.filter((row) => row.method === method),
-    rows.filter((row) => row.method === reference),
-    score,
-  );
 }
 
 /**
@@ -106,11 +89,6 @@ export function pairRows(
   });
 }
 
-/** Paired differences of one task, (n) with n ≥ 1: mean, interval, and tests of "no difference" and "small difference". */
-export function testDifferences(differences: readonly number[], options: DifferenceOptions): DifferenceTest {
-  return testTaskDifferences([differences], options);
-}
-
 /**
  * Paired differences of several tasks, each task weighing the same. The sign-flip test flips every pair of every task,
  * and its statistic is the mean of task means; interval and equivalence use the standard error of that mean with
@@ -122,18 +100,18 @@ export function testDifferences(differences: readonly number[], options: Differe
  */
 export function testTaskDifferences(
   tasks: readonly (readonly number[])[],
-  { margin, level = intervalLevel, stream }: DifferenceOptions,
+  { margin, level = intervalLevel, stream, patterns }: DifferenceOptions,
 ): DifferenceTest {
   if (!(margin > 0 && Number.isFinite(margin))) throw new RangeError(`margin must be above 0, got ${margin}`);
   const about = stratifiedMean(tasks);
   const weighted = tasks.flatMap((pairs) => pairs.map((pair) => pair / (tasks.length * pairs.length)));
-  const flips = signFlipTest(weighted, { stream: stream.split('sign flips') });
+  const flips = signFlipTest(weighted, patterns ? { patterns } : { stream: stream.split('sign flips') });
   return {
     tasks: about.tasks,
     n: about.n,
     mean: about.mean,
     standardDeviation: about.standardDeviation ?? null,
-    interval: differenceInterval(tasks, { level, stream: stream.split('interval') }),
+    interval: stratifiedInterval(tasks, { level }),
     p: flips.p,
     test: flips.method,
     monteCarloStandardError: flips.method === 'sign-flip-drawn' ? flips.monteCarloStandardError : 0,

@@ -94,7 +94,9 @@ function labelMethods(rows: readonly CellRow[]): (row: CellRow) => string {
 
 function seedsOf(rows: readonly CellRow[]): Pick<SectionCells, 'seeds' | 'bestVisible'> {
   const first = new Map<number, CellRow>();
-  for (const row of [...rows].sort((a, b) => a.seed - b.seed || compareText(cellId(a), cellId(b)))) {
+  const order = (a: CellRow, b: CellRow): number =>
+    a.seed - b.seed || compareText(a.method, b.method) || compareText(a.settings, b.settings);
+  for (const row of [...rows].sort(order)) {
     const other = first.get(row.seed);
     if (other === undefined) first.set(row.seed, row);
     else checkPaired(other, row);
@@ -115,9 +117,10 @@ function checkPaired(a: CellRow, b: CellRow): void {
 function groupBy<T>(items: readonly T[], key: (item: T) => string): T[][] {
   const groups = new Map<string, T[]>();
   for (const item of items) {
-    const group = groups.get(key(item));
+    const name = key(item);
+    const group = groups.get(name);
     if (group) group.push(item);
-    else groups.set(key(item), [item]);
+    else groups.set(name, [item]);
   }
   return [...groups.values()];
 }

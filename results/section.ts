@@ -1,8 +1,10 @@
 import type { Stream } from '../harness/random.js';
 import { type CellRow, cellId } from '../harness/row.js';
 import type { OptimumKnowledge } from '../harness/task.js';
-import { type Estimate, estimateMean } from './estimate.js';
+import { type Estimate, estimateMean, estimateShare, type ShareEstimate } from './estimate.js';
+import { type Against, holdAgainst, type ReferenceBlock } from './reference.js';
 import type { MethodCells, SectionCells } from './scores.js';
+import type { TaskMeans } from './task-means.js';
 
 /** One method on one task behind one curtain. */
 export interface MethodScores {
@@ -17,6 +19,8 @@ export interface MethodScores {
   readonly lift: Estimate;
   /** Over the cells that stated a belief, which `n` counts; null where none did. */
   readonly optimism: Estimate | null;
+  /** Share of cells whose batch held a better design than the best visible one. */
+  readonly beatVisible: ShareEstimate;
   /** Mean of the different designs in a batch, over the cells that did not fail; null where all failed. */
   readonly distinct: number | null;
   /** Mean over the cells whose time is known; null where none is. */
@@ -43,19 +47,25 @@ export interface Section {
   readonly bestVisible: Estimate;
   /** From the highest mean best to the lowest. */
   readonly methods: readonly MethodScores[];
+  /** Every other method against the reference; null where that has no cell here, or is the only method. */
+  readonly reference: ReferenceBlock | null;
 }
+
+/** The scores that have an estimate. */
+export type ScoreName = 'best' | 'median' | 'lift' | 'optimism';
 
 /** What is needed beside the cells. */
 export interface ScoringOptions {
   readonly seconds: ReadonlyMap<string, number>;
   readonly resamples: number;
   readonly stream: Stream;
+  /** The method that the others are held against, and how. */
+  readonly against: Against;
+  /** Where a method's score is collected over all tasks; the line to beat has no method. */
+  readonly total?: (method: string | null, score: ScoreName) => TaskMeans;
 }
 
-/**
- * Means and intervals of one task behind one curtain. All bootstraps of a section draw the same seeds, so that methods
- * with the same scores have the same intervals.
- */
+/** Means and intervals of one task behind one curtain. */
 export function scoreSection(cells: SectionCells, options: ScoringOptions): Section {
   const stream = options.stream.split(cells.task, cells.curtain);
   const rows = cells.methods.flatMap((method) => method.rows);
@@ -68,10 +78,11 @@ export function scoreSection(cells: SectionCells, options: ScoringOptions): Sect
     ),
     batch: range(rows.map((row) => row.batch)),
     visible: range(rows.map((row) => row.visible)),
-    bestVisible: estimate(cells.bestVisible, { ...options, stream }),
+    bestVisible: estimateMean(cells.bestVisible, options.total?.(null, 'best')),
     methods: cells.methods
-      .map((method) => scoreMethod(method, { ...options, stream }))
+      .map((method) => scoreMethod(method, options))
       .sort((a, b) => b.best.value - a.best.value),
+    reference: holdAgainst([cells], options.against, stream),
   };
 }
 
@@ -101,24 +112,36 @@ export function meanDistinct(rows: readonly CellRow[]): number | null {
 }
 
 function scoreMethod({ method, settings, rows }: MethodCells, options: ScoringOptions): MethodScores {
-  const mean = (score: (row: CellRow) => number): Estimate => estimate(rows.map(score), options);
+  const mean = (name: ScoreName, values: readonly number[]): Estimate =>
+    estimateMean(values, options.total?.(method, name));
   const believed = beliefs(rows);
   return {
     method,
     settings,
     cells: rows.length,
     failures: countFailures(rows),
-    best: mean((row) => row.best),
-    median: mean((row) => row.median),
-    lift: mean((row) => row.lift),
-    optimism: believed.length === 0 ? null : estimate(believed, options),
+    best: mean(
+      'best',
+      rows.map((row) => row.best),
+    ),
+    median: mean(
+      'median',
+      rows.map((row) => row.median),
+    ),
+    lift: mean(
+      'lift',
+      rows.map((row) => row.lift),
+    ),
+    optimism: believed.length === 0 ? null : mean('optimism', believed),
+    beatVisible: shareBeatingVisible(rows),
     distinct: meanDistinct(rows),
     seconds: meanSeconds(rows, options.seconds),
   };
 }
 
-function estimate(values: readonly number[], { resamples, stream }: ScoringOptions): Estimate {
-  return estimateMean(values, { resamples, stream: stream.split('seeds drawn') });
+/** Share of cells whose batch held a better design than the best visible one, with Wilson's interval. */
+export function shareBeatingVisible(rows: readonly CellRow[]): ShareEstimate {
+  return estimateShare(rows, (row) => row.best > row.bestVisible);
 }
 
 function range(counts: readonly number[]): CountRange {

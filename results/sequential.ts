@@ -87,15 +87,17 @@ function rejectStepwise(
   }
 }
 
+/** Nominal levels worked out before, which takes longer than all else of a rule. */
+const known = new Map<string, number[]>();
+
 /** One-sided nominal levels of each look when `open` hypotheses share alpha; each worked out once. */
 function levelKeeper(information: readonly number[], alpha: number) {
-  const known = new Map<number, number[]>();
   return (open: number, sides: 'one-sided' | 'two-sided'): number[] => {
     const shares = open * (sides === 'two-sided' ? 2 : 1);
+    const key = JSON.stringify([information, alpha, shares]);
     const levels =
-      known.get(shares) ??
-      spendingBounds(information, alpha / shares).map((bound) => normal.cdf(-bound, 0, 1));
-    known.set(shares, levels);
+      known.get(key) ?? spendingBounds(information, alpha / shares).map((bound) => normal.cdf(-bound, 0, 1));
+    known.set(key, levels);
     return levels;
   };
 }

@@ -26,12 +26,16 @@ export type SeedsNeeded =
   | { readonly kind: 'unknown' };
 
 /** A verdict and what it rests on. */
-export interface Decision {
+export interface Judgement {
   readonly verdict: VerdictWord;
   /** Of "no difference", by Holm over all tests given. */
   readonly adjustedP: number;
   /** Of "a difference at or outside the margin", by Holm over all tests given. */
   readonly adjustedEquivalenceP: number;
+}
+
+/** A verdict, and what would reach it where it isn't. */
+export interface Decision extends Judgement {
   /** Null where the verdict is reached. */
   readonly seedsNeeded: SeedsNeeded | null;
 }
@@ -54,6 +58,28 @@ export type Evidence = Pick<
  * little.
  *
  * @param tests one for each method but the reference, (m); m may be 0.
+ */
+export function adjustAndJudge(
+  tests: readonly Evidence[],
+  options: { readonly alpha?: number } = {},
+): Judgement[] {
+  const { alpha = defaultAlpha } = options;
+  const adjusted = holmAdjust(tests.map(({ p }) => p));
+  const adjustedEquivalence = holmAdjust(tests.map(({ equivalenceP }) => equivalenceP));
+  return tests.map((test, i) => {
+    const adjustedP = adjusted[i]!;
+    const adjustedEquivalenceP = adjustedEquivalence[i]!;
+    return {
+      verdict: decide(test, { adjustedP, adjustedEquivalenceP, alpha }),
+      adjustedP,
+      adjustedEquivalenceP,
+    };
+  });
+}
+
+/**
+ * `adjustAndJudge`, and for each undecided method the number of seeds that would decide.
+ *
  * @throws RangeError for a margin or alpha out of range.
  */
 export function adjustAndDecide(
@@ -61,15 +87,10 @@ export function adjustAndDecide(
   options: { readonly margin: number; readonly alpha?: number },
 ): Decision[] {
   const { margin, alpha = defaultAlpha } = options;
-  const adjusted = holmAdjust(tests.map(({ p }) => p));
-  const adjustedEquivalence = holmAdjust(tests.map(({ equivalenceP }) => equivalenceP));
-  return tests.map((test, i) => {
-    const adjustedP = adjusted[i]!;
-    const adjustedEquivalenceP = adjustedEquivalence[i]!;
-    const verdict = decide(test, { adjustedP, adjustedEquivalenceP, alpha });
-    const seedsNeeded =
-      verdict === 'undecided' ? countSeedsNeeded(test, { margin, alpha, tests: tests.length }) : null;
-    return { verdict, adjustedP, adjustedEquivalenceP, seedsNeeded };
+  return adjustAndJudge(tests, { alpha }).map((judgement, i) => {
+    const plan = { margin, alpha, tests: tests.length };
+    const seedsNeeded = judgement.verdict === 'undecided' ? countSeedsNeeded(tests[i]!, plan) : null;
+    return { ...judgement, seedsNeeded };
   });
 }
 

@@ -22,6 +22,7 @@ const methodEntry = z.strictObject({
   caution: z.string().optional(),
   as: label.optional(),
   settings: z.record(z.string(), z.unknown()).default({}),
+  sweep: z.record(z.string(), z.unknown()).optional(),
 });
 
 /** A plan file after short forms are spelt out; names and settings are checked against the catalogue afterwards. */
@@ -38,6 +39,7 @@ export const planFileSchema = z.strictObject({
   tasks: z.array(taskEntry).min(1),
   curtains: z.array(curtainSchema).min(1).default([{}]),
   methods: z.array(methodEntry).min(1),
+  choose: z.strictObject({ on: z.enum(['seeds', 'tasks']).default('seeds') }).optional(),
 });
 
 export type PlanFile = z.output<typeof planFileSchema>;

@@ -20,7 +20,12 @@ export interface PlannedMethod {
   readonly label: string;
   readonly method: MethodReference;
   readonly settings: Settings;
+  /** The label that tables give to the one chosen of this method and its fellows; absent where it is no such variant. */
+  readonly sweep?: string;
 }
+
+/** What is halved so that sweeps are chosen on one half and reported on the other. */
+export type Halved = 'seeds' | 'tasks';
 
 /** What `keep` can ask for. */
 export type Kept = 'batches' | 'traces';
@@ -34,6 +39,11 @@ export interface Plan {
   readonly methodSeed?: number;
   /** Repeats: cells run with seeds 1 … seeds. */
   readonly seeds: number;
+  /**
+   * Numbers of seeds, ascending up to `seeds`, after which verdicts are looked at and the rehearsal ends if all are
+   * reached; absent where it runs all seeds whatever they say.
+   */
+  readonly looks?: readonly number[];
   /** Designs in a pool. */
   readonly pool: number;
   /** Designs in a batch. */
@@ -46,4 +56,6 @@ export interface Plan {
   readonly keep: readonly Kept[];
   readonly tasks: readonly PlannedTask[];
   readonly methods: readonly PlannedMethod[];
+  /** How sweeps are chosen; absent where the plan has none. */
+  readonly choose?: { readonly on: Halved };
 }

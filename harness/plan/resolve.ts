@@ -6,6 +6,8 @@ import { suggestion } from '../nearest-word.js';
 import type { MethodEntry, PlanFile, TaskEntry } from './file-schema.js';
 import type { Plan, PlannedMethod, PlannedTask, Settings } from './plan.js';
 import { check, type KeyPath, type Problem, show } from './problems.js';
+import { expandSweep } from './sweep.js';
+import { labelVariants } from './variant-label.js';
 
 const partKeys = { surrogate: 'surrogates', search: 'searches', caution: 'cautions' } as const;
 
@@ -19,20 +21,30 @@ export function resolve(
   const tasks = file.tasks.flatMap((entry, i) => {
     return resolveTask(entry, file.curtains, catalogue, ['tasks', i], problems) ?? [];
   });
-  const methods = file.methods.flatMap((entry, i) => {
-    return resolveMethod(entry, catalogue, ['methods', i], problems) ?? [];
-  });
-  problems.push(...repeatedLabels('tasks', tasks), ...repeatedLabels('methods', methods));
+  const entries = file.methods.map((entry, i) => resolveMethod(entry, catalogue, ['methods', i], problems));
+  const methods = entries.flatMap((entry) => entry?.methods ?? []);
+  problems.push(
+    ...repeatedLabels(
+      'tasks',
+      tasks.map(({ label }) => [label]),
+    ),
+    ...repeatedLabels(
+      'methods',
+      entries.map((entry) => entry?.labels ?? []),
+    ),
+  );
   problems.push(...repeatedCurtains(file.curtains, ['curtains']));
   file.tasks.forEach(({ curtains = [] }, i) => {
     problems.push(...repeatedCurtains(curtains, ['tasks', i, 'curtains']));
   });
   const { name = defaultName, seed, methodSeed, seeds, pool, batch, budgetSeconds, backend, keep } = file;
   const seeded = methodSeed === undefined ? { seed } : { seed, methodSeed };
-  return {
-    plan: { name, ...seeded, seeds, pool, batch, budgetSeconds, backend, keep, tasks, methods },
-    problems,
-  };
+  const plan = { name, ...seeded, seeds, pool, batch, budgetSeconds, backend, keep, tasks, methods };
+  if (file.methods.some(({ sweep }) => sweep !== undefined))
+    return { plan: { ...plan, choose: file.choose ?? { on: 'seeds' } }, problems };
+  if (file.choose !== undefined)
+    problems.push({ path: ['choose'], message: 'there is nothing to choose, as no method has a sweep' });
+  return { plan, problems };
 }
 
 function resolveTask(
@@ -53,17 +65,40 @@ function resolveTask(
   };
 }
 
+/** What an entry of the list of methods comes to: one method, or a variant for each combination of its sweep. */
+interface ResolvedMethod {
+  /** Everything that tables may name it by. */
+  readonly labels: readonly string[];
+  readonly methods: readonly PlannedMethod[];
+}
+
 function resolveMethod(
   entry: MethodEntry,
   catalogue: Catalogue,
   at: KeyPath,
   problems: Problem[],
-): PlannedMethod | undefined {
+): ResolvedMethod | undefined {
   const reference = referenceOf(entry, catalogue, at, problems);
   if (reference === undefined) return undefined;
   const method = lookUpMethod(catalogue, reference);
-  const settings = fill(method.settings, entry.settings, [...at, 'settings'], problems);
-  return { label: entry.as ?? method.name, method: reference, settings };
+  const label = entry.as ?? method.name;
+  if (entry.sweep === undefined) {
+    const settings = fill(method.settings, entry.settings, [...at, 'settings'], problems);
+    return { labels: [label], methods: [{ label, method: reference, settings }] };
+  }
+  const { settings, sweep } = entry;
+  const expanded = expandSweep({ settings, sweep }, method.settings, at);
+  problems.push(...expanded.problems);
+  const labels = labelVariants(
+    label,
+    expanded.variants.map(({ choice }) => choice),
+  );
+  return {
+    labels: [label, ...labels],
+    methods: expanded.variants.map((variant, i) => {
+      return { label: labels[i]!, method: reference, settings: variant.settings, sweep: label };
+    }),
+  };
 }
 
 function referenceOf(
@@ -127,17 +162,17 @@ function labelOf(name: string, given: Settings): string {
   return words.length === 0 ? name : `${name}(${words.join(',')})`;
 }
 
-function repeatedLabels(list: string, entries: readonly { label: string }[]): Problem[] {
+/** @param entries the labels of each entry. */
+function repeatedLabels(list: string, entries: readonly (readonly string[])[]): Problem[] {
   const seen = new Set<string>();
-  return entries.flatMap(({ label }, i) => {
-    if (!seen.has(label)) {
-      seen.add(label);
-      return [];
-    }
+  return entries.flatMap((labels, i) => {
+    const again = labels.find((label) => seen.has(label));
+    for (const label of labels) seen.add(label);
+    if (again === undefined) return [];
     return [
       {
         path: [list, i],
-        message: `is the second one labelled "${label}"; give it a name of its own with "as"`,
+        message: `is the second one labelled "${again}"; give it a name of its own with "as"`,
       },
     ];
   });

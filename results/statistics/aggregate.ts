@@ -32,13 +32,11 @@ function meanOfTaskMeans({ values, starts, tasks }: TaskRuns): CountedAggregate 
 }
 
 function pooledInterquartileMean({ values }: TaskRuns): CountedAggregate {
-  const order = orderByDescending(values).reverse();
+  const order = Uint32Array.from(orderByDescending(values)).reverse();
   const sorted = Float64Array.from(order, (i) => values[i]!);
   const sortedCounts = new Uint32Array(values.length);
   return (counts) => {
-    order.forEach((i, rank) => {
-      sortedCounts[rank] = counts[i]!;
-    });
+    for (let rank = 0; rank < order.length; rank++) sortedCounts[rank] = counts[order[rank]!]!;
     return interquartileMeanSorted(sorted, sortedCounts, values.length);
   };
 }

@@ -79,11 +79,27 @@ export function bcaInterval(
  * @throws RangeError for fewer than two values, one that isn't finite, or a level outside (0, 1).
  */
 export function bcaMeanInterval(values: ArrayLike<number>, options: BcaOptions): BcaInterval {
-  const { level = 0.95, resamples = defaultResamples, stream } = options;
+  const { level = 0.95 } = options;
   checkShare(level, 'level');
   checkValues(values, 'values', 2);
-  checkCount(resamples, 'resamples');
   const { n, mean } = moments(values);
+  const replicates = drawMeans(values, mean, options);
+  const deviations = Float64Array.from(values, (value) => value - mean);
+  const size = deviations.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+  const jackknife = deviations.map((deviation) => -deviation / (n - 1));
+  const centre = moments(deviations).mean;
+  const centred = assemble({ n, estimate: centre, jackknife, replicates, tie: tieTolerance * size, level });
+  return { ...centred, estimate: mean, low: mean + centred.low, high: mean + centred.high };
+}
+
+/** Means of resamples, minus the mean of the values. */
+function drawMeans(
+  values: ArrayLike<number>,
+  mean: number,
+  { resamples = defaultResamples, stream }: BcaOptions,
+): Float64Array {
+  checkCount(resamples, 'resamples');
+  const n = values.length;
   const deviations = Float64Array.from(values, (value) => value - mean);
   const replicates = new Float64Array(resamples);
   for (let b = 0; b < resamples; b++) {
@@ -91,11 +107,7 @@ export function bcaMeanInterval(values: ArrayLike<number>, options: BcaOptions):
     for (let i = 0; i < n; i++) sum += deviations[Math.floor(stream.uniform() * n)]!;
     replicates[b] = sum / n;
   }
-  const size = deviations.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
-  const jackknife = deviations.map((deviation) => -deviation / (n - 1));
-  const centre = moments(deviations).mean;
-  const centred = assemble({ n, estimate: centre, jackknife, replicates, tie: tieTolerance * size, level });
-  return { ...centred, estimate: mean, low: mean + centred.low, high: mean + centred.high };
+  return replicates;
 }
 
 interface Bootstrapped {

@@ -110,11 +110,12 @@ function searchPairs(
   { alpha, power }: { readonly alpha: number; readonly power: number },
 ): PairsNeeded {
   if (approximate > normalFrom) return { method: 'normal', pairs: Math.ceil(approximate), power, alpha };
-  let low = 1;
-  let high = Math.max(2, Math.ceil(approximate));
-  while (powerOf(high) < power) {
+  let low = Math.max(1, Math.floor(approximate));
+  for (let step = 1; low > 1 && powerOf(low) >= power; step *= 2) low = Math.max(1, low - step);
+  let high = low + 1;
+  for (let step = 1; powerOf(high) < power; step *= 2) {
     low = high;
-    high *= 2;
+    high += step;
   }
   while (high - low > 1) {
     const middle = Math.floor((low + high) / 2);

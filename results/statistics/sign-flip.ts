@@ -8,6 +8,12 @@ export const exactUpTo = 16;
 /** Sums that differ by less than this share of the sum of sizes count as equal, for rounding depends on signs. */
 const tieTolerance = 1e-12;
 
+/** Patterns drawn beyond `exactUpTo` pairs unless told otherwise. */
+export const defaultFlips = 20_000;
+
+/** Bytes of drawn patterns kept for use again. */
+const mostKept = 2 ** 25;
+
 /** The side on which a difference speaks against "no difference". */
 export type Alternative = 'two-sided' | 'greater' | 'less';
 
@@ -48,20 +54,28 @@ interface Drawn {
  * @param differences (n), n ≥ 1, candidate minus reference; `greater` asks whether the candidate is larger.
  * @param options.alternative `two-sided` unless given.
  * @param options.flips patterns drawn beyond 16 pairs; 20,000 unless given.
+ * @param options.patterns patterns shared between tests, instead of flips drawn from the stream.
  * @throws RangeError for no differences or one that isn't finite.
  */
 export function signFlipTest(
   differences: ArrayLike<number>,
-  options: { readonly alternative?: Alternative; readonly flips?: number; readonly stream: Stream },
+  options: { readonly alternative?: Alternative } & (
+    | { readonly flips?: number; readonly stream: Stream }
+    | { readonly patterns: SignPatterns }
+  ),
 ): SignFlipTest {
-  const { alternative = 'two-sided', flips = 20_000, stream } = options;
+  const { alternative = 'two-sided' } = options;
   checkValues(differences, 'differences');
-  checkCount(flips, 'flips');
+  const patterns =
+    'patterns' in options
+      ? options.patterns
+      : new SignPatterns(options.stream, options.flips ?? defaultFlips);
+  const { flips } = patterns;
   const n = differences.length;
   const values = Float64Array.from(differences);
   const exact = n <= exactUpTo;
   const observed = values.reduce((sum, value) => sum + value, 0);
-  const sums = exact ? allSums(values) : drawnSums(values, flips, stream);
+  const sums = exact ? allSums(values) : drawnSums(values, patterns);
   const tie = tieTolerance * values.reduce((sum, value) => sum + Math.abs(value), 0);
   const count = countAsFarOut(sums, observed, tie, alternative);
   const base = { n, meanDifference: moments(values).mean, alternative };
@@ -82,19 +96,77 @@ function allSums(values: Float64Array): Float64Array {
   return sums;
 }
 
-/** The sum under `flips` random sign patterns; each uniform number gives 32 signs. */
-function drawnSums(values: Float64Array, flips: number, stream: Stream): Float64Array {
-  const sums = new Float64Array(flips);
-  for (let flip = 0; flip < flips; flip++) {
+/** The sum under each drawn sign pattern, eight signs at a time: a table holds the sums of all patterns of eight. */
+function drawnSums(values: Float64Array, patterns: SignPatterns): Float64Array {
+  const groups = Math.ceil(values.length / 8);
+  const tables = new Float64Array(groups * 256);
+  for (let g = 0; g < groups; g++) tables.set(sumsOfEight(values.subarray(8 * g, 8 * g + 8)), 256 * g);
+  const sums = new Float64Array(patterns.flips);
+  const bytes = patterns.bytesFor(values.length);
+  for (let flip = 0; flip < patterns.flips; flip++) {
+    const { from, signs } = bytes(flip);
     let sum = 0;
-    let bits = 0;
-    for (let i = 0; i < values.length; i++) {
-      bits = i % 32 === 0 ? Math.floor(stream.uniform() * 2 ** 32) : bits >>> 1;
-      sum += bits & 1 ? values[i]! : -values[i]!;
-    }
+    for (let g = 0; g < groups; g++) sum += tables[256 * g + signs[from + g]!]!;
     sums[flip] = sum;
   }
   return sums;
+}
+
+/** Sums of up to eight values under all 256 patterns; bit k set keeps the sign of value k. */
+function sumsOfEight(values: Float64Array): Float64Array {
+  const sums = new Float64Array(256);
+  for (let pattern = 0; pattern < 256; pattern++) {
+    let sum = 0;
+    for (let k = 0; k < values.length; k++) sum += (pattern >>> k) & 1 ? values[k]! : -values[k]!;
+    sums[pattern] = sum;
+  }
+  return sums;
+}
+
+/** Random sign patterns, drawn once for all tests with the same number of pairs. */
+export class SignPatterns {
+  readonly flips: number;
+  readonly #stream: Stream;
+  readonly #kept = new Map<number, Uint8Array>();
+
+  /** @param flips patterns; 20,000 unless given. */
+  constructor(stream: Stream, flips = defaultFlips) {
+    checkCount(flips, 'flips');
+    this.flips = flips;
+    this.#stream = stream;
+  }
+
+  /** A reader of the patterns for n pairs, to be called with 0, 1, …: the signs of a flip, eight a byte, from `from`. */
+  bytesFor(n: number): (flip: number) => { readonly from: number; readonly signs: Uint8Array } {
+    const words = Math.ceil(n / 32);
+    const width = 4 * words;
+    const stream = this.#stream.split('signs');
+    if (width * this.flips > mostKept) {
+      const signs = new Uint8Array(width);
+      return () => {
+        drawBytes(signs, 0, words, stream);
+        return { from: 0, signs };
+      };
+    }
+    const kept = this.#kept.get(width) ?? new Uint8Array(width * this.flips);
+    if (!this.#kept.has(width)) {
+      for (let flip = 0; flip < this.flips; flip++) drawBytes(kept, flip * width, words, stream);
+      this.#kept.set(width, kept);
+    }
+    return (flip) => ({ from: flip * width, signs: kept });
+  }
+}
+
+/** Each uniform number gives 32 signs. */
+function drawBytes(signs: Uint8Array, from: number, words: number, stream: Stream): void {
+  for (let word = 0; word < words; word++) {
+    const bits = Math.floor(stream.uniform() * 2 ** 32);
+    const at = from + 4 * word;
+    signs[at] = bits;
+    signs[at + 1] = bits >>> 8;
+    signs[at + 2] = bits >>> 16;
+    signs[at + 3] = bits >>> 24;
+  }
 }
 
 function countAsFarOut(sums: Float64Array, observed: number, tie: number, alternative: Alternative): number {

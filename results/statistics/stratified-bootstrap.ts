@@ -2,8 +2,9 @@ import type { Stream } from '../../harness/random.js';
 import { type Aggregate, countedAggregate } from './aggregate.js';
 import { defaultResamples } from './bca.js';
 import { checkCount, checkShare } from './check-values.js';
+import { expandedLevel } from './expanded-level.js';
 import { quantileSorted } from './quantile.js';
-import { haveEqualShape, redrawRuns, stackTasks } from './task-runs.js';
+import { haveEqualShape, redrawRuns, stackTasks, type TaskRuns } from './task-runs.js';
 
 /** How a stratified bootstrap is carried out. */
 export interface StratifiedOptions {
@@ -12,12 +13,14 @@ export interface StratifiedOptions {
   readonly level?: number;
   /** Resamples drawn; 10,000 unless given. */
   readonly resamples?: number;
+  /** Whether the interval is widened as `expandedLevel` says; not unless given. */
+  readonly expanded?: boolean;
   readonly stream: Stream;
 }
 
 /** An aggregate over tasks with its percentile interval. */
 export interface StratifiedInterval {
-  readonly method: 'stratified-percentile';
+  readonly method: 'stratified-percentile' | 'stratified-expanded-percentile';
   readonly aggregate: Aggregate;
   /** The aggregate of the runs themselves. */
   readonly estimate: number;
@@ -42,21 +45,59 @@ export function stratifiedBootstrap(
   tasks: readonly ArrayLike<number>[],
   options: StratifiedOptions,
 ): StratifiedInterval {
-  const runs = stackTasks(tasks);
-  const aggregate = countedAggregate(runs, options.aggregate);
-  const counts = new Uint32Array(runs.values.length);
-  const interval = percentileInterval(options, () => {
-    redrawRuns(runs, counts, options.stream);
-    return aggregate(counts);
-  });
-  return {
-    method: 'stratified-percentile',
+  return bootstrapTogether([stackTasks(tasks)], options)[0]!;
+}
+
+/**
+ * `stratifiedBootstrap` of several methods. Methods with the same numbers of runs are given the same redrawn runs, so
+ * that the random numbers are drawn once, and methods with the same scores have the same interval.
+ *
+ * @param methods for each method its tasks, as for `stratifiedBootstrap`.
+ */
+export function stratifiedBootstraps(
+  methods: readonly (readonly ArrayLike<number>[])[],
+  options: StratifiedOptions,
+): StratifiedInterval[] {
+  const stacked = methods.map(stackTasks);
+  const shapes = new Map<string, TaskRuns[]>();
+  for (const runs of stacked) {
+    const shape = runs.starts.join();
+    shapes.set(shape, [...(shapes.get(shape) ?? []), runs]);
+  }
+  const found = new Map<TaskRuns, StratifiedInterval>();
+  for (const alike of shapes.values()) {
+    const stream = options.stream.split('runs drawn');
+    const intervals = bootstrapTogether(alike, { ...options, stream });
+    for (const [i, runs] of alike.entries()) found.set(runs, intervals[i]!);
+  }
+  return stacked.map((runs) => found.get(runs)!);
+}
+
+/** The intervals of methods with the same numbers of runs. */
+function bootstrapTogether(methods: readonly TaskRuns[], options: StratifiedOptions): StratifiedInterval[] {
+  const { level = 0.95, resamples = defaultResamples, expanded = false, stream } = options;
+  checkShare(level, 'level');
+  checkCount(resamples, 'resamples');
+  const aggregates = methods.map((runs) => countedAggregate(runs, options.aggregate));
+  const replicates = methods.map(() => new Float64Array(resamples));
+  const [shape] = methods;
+  const counts = new Uint32Array(shape!.values.length);
+  for (let b = 0; b < resamples; b++) {
+    redrawRuns(shape!, counts, stream);
+    for (let m = 0; m < methods.length; m++) replicates[m]![b] = aggregates[m]!(counts);
+  }
+  counts.fill(1);
+  const widened = expanded && counts.length > shape!.tasks;
+  const taken = widened ? expandedLevel(level, { values: counts.length, tasks: shape!.tasks }) : level;
+  return methods.map((runs, m) => ({
+    method: widened ? 'stratified-expanded-percentile' : 'stratified-percentile',
     aggregate: options.aggregate,
-    estimate: aggregate(counts.fill(1)),
+    estimate: aggregates[m]!(counts),
     tasks: runs.tasks,
     runs: counts.length,
-    ...interval,
-  };
+    ...percentiles(replicates[m]!, taken),
+    level,
+  }));
 }
 
 /**
@@ -106,8 +147,16 @@ export function percentileInterval(
   checkCount(resamples, 'resamples');
   const replicates = new Float64Array(resamples);
   for (let b = 0; b < resamples; b++) replicates[b] = draw();
+  return percentiles(replicates, level);
+}
+
+/** The percentile interval of replicates, which are put into order. */
+export function percentiles(
+  replicates: Float64Array,
+  level: number,
+): { readonly level: number; readonly resamples: number; readonly low: number; readonly high: number } {
   replicates.sort();
   const low = quantileSorted(replicates, (1 - level) / 2);
   const high = quantileSorted(replicates, (1 + level) / 2);
-  return { level, resamples, low, high };
+  return { level, resamples: replicates.length, low, high };
 }

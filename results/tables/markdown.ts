@@ -1,22 +1,43 @@
 import type { Comparison } from '../comparison.js';
 import type { Estimate } from '../estimate.js';
 import type { Foot } from '../foot.js';
-import { formatCount, formatDifference, formatScore, formatSeconds, missing } from '../format-number.js';
+import {
+  formatCount,
+  formatDifference,
+  formatP,
+  formatScore,
+  formatSeconds,
+  missing,
+} from '../format-number.js';
 import type { Note, Notes } from '../notes.js';
 import type { Overall, OverallScores } from '../overall.js';
+import type { Ranks } from '../ranks.js';
+import type { ReferenceBlock } from '../reference.js';
 import type { MethodScores, Section } from '../section.js';
+import { referenceRows } from './reference-rows.js';
+import { describeTable } from './table-foot.js';
 import { oneLine } from './text-width.js';
-import { bestVisibleLabel, countAbove, describeSection, describeTasks } from './words.js';
+import {
+  bestVisibleLabel,
+  countAbove,
+  describeDecision,
+  describeOutcomes,
+  describeSection,
+  describeShare,
+  describeTasks,
+  describeTop,
+} from './words.js';
 
 /** A comparison as Markdown with pipe tables: one for each section, one over all tasks, then what stands out. */
-export function renderMarkdown({ sections, overall, notes, foot }: Comparison): string {
+export function renderMarkdown(comparison: Comparison): string {
+  const { sections, overall, notes, foot } = comparison;
   const blocks = [
     '# Comparison',
     escapeMarkdown(
       `${foot.scale} Brackets hold 95 % intervals. Methods above the row "${bestVisibleLabel}" found, on average, better designs than the table held.`,
     ),
-    ...sections.flatMap(sectionBlocks),
-    ...(overall === null ? [] : overallBlocks(overall, sections)),
+    ...sections.flatMap((section) => sectionBlocks(comparison, section)),
+    ...(overall === null ? [] : overallBlocks(comparison, overall)),
     ...noteBlocks(notes),
     ...footBlocks(foot),
   ];
@@ -28,7 +49,7 @@ export function escapeMarkdown(text: string): string {
   return oneLine(text).replace(/[\\`*_{}[\]<>#|~&$]/g, '\\$&');
 }
 
-function sectionBlocks(section: Section): string[] {
+function sectionBlocks(comparison: Comparison, section: Section): string[] {
   const header = ['method', 'best', 'median', 'lift', 'optimism', 'failed', 'distinct', 'seconds'];
   const rows = section.methods.map((scores) => [
     escapeMarkdown(scores.method),
@@ -42,12 +63,15 @@ function sectionBlocks(section: Section): string[] {
   );
   return [
     `## ${escapeMarkdown(section.task)}`,
-    escapeMarkdown(describeSection(section).join(' · ')),
+    escapeMarkdown([...describeSection(section), describeTop(section.top)].join(' · ')),
     pipeTable(header, rows.toSpliced(place, 0, lineToBeat([section.bestVisible]))),
+    ...referenceBlocks(section.reference, section.methods, null),
+    escapeMarkdown(describeTable(comparison, section)),
   ];
 }
 
-function overallBlocks({ bestVisible, methods }: Overall, sections: readonly Section[]): string[] {
+function overallBlocks(comparison: Comparison, overall: Overall): string[] {
+  const { bestVisible, methods } = overall;
   const header = ['method', 'best', 'IQM of best', 'median', 'IQM of median'];
   const rows = methods.map((scores) => [
     escapeMarkdown(scores.method),
@@ -63,12 +87,47 @@ function overallBlocks({ bestVisible, methods }: Overall, sections: readonly Sec
   );
   return [
     '## All tasks',
-    `${describeTasks(sections)} · mean of the tasks' means · IQM: interquartile mean over all cells`,
+    `${describeTasks(comparison.sections)} · mean of the tasks' means · IQM: interquartile mean over all cells`,
     pipeTable(
       [...header, 'lift', 'optimism', 'failed', 'distinct', 'seconds'],
       rows.toSpliced(place, 0, lineToBeat([bestVisible.mean, bestVisible.interquartileMean])),
     ),
+    ...referenceBlocks(overall.reference, methods, overall.ranks),
+    escapeMarkdown(describeTable(comparison, overall)),
   ];
+}
+
+function referenceBlocks(
+  block: ReferenceBlock | null,
+  scores: readonly (MethodScores | OverallScores)[],
+  ranks: Ranks | null,
+): string[] {
+  if (block === null) return [];
+  const header = [
+    'method',
+    'difference',
+    'p',
+    'verdict',
+    'w/t/l',
+    ...(ranks ? ['rank'] : []),
+    'beat visible',
+  ];
+  const rows = referenceRows(block, scores, ranks).map(
+    ({ method, isReference, against, meanRank, beatVisible }) => [
+      escapeMarkdown(method),
+      ...(against === null
+        ? [missing, missing, isReference ? 'reference' : 'no pair', missing]
+        : [
+            showEstimate(against.difference, formatDifference),
+            escapeMarkdown(formatP(against.adjustedP)),
+            escapeMarkdown(describeDecision(against)),
+            describeOutcomes(against),
+          ]),
+      ...(ranks ? [meanRank?.toFixed(2) ?? missing] : []),
+      escapeMarkdown(describeShare(beatVisible)),
+    ],
+  );
+  return [`Against ${escapeMarkdown(block.method)}, by ${block.score}:`, pipeTable(header, rows)];
 }
 
 function sharedCells(scores: MethodScores | OverallScores): string[] {
@@ -100,9 +159,8 @@ function showEstimate({ value, interval }: Estimate, format: (value: number) => 
   return `${format(value)} \\[${format(interval.low)}, ${format(interval.high)}\\]`;
 }
 
-function noteBlocks({ better, fooled, failed, incomplete }: Notes): string[] {
+function noteBlocks({ fooled, failed, incomplete }: Notes): string[] {
   const kinds: [string, readonly Note[]][] = [
-    ['Better than best visible', better],
     ['Fooled by its own model', fooled],
     ['Failed', failed],
     ['Not finished', incomplete],
@@ -114,13 +172,14 @@ function noteBlocks({ better, fooled, failed, incomplete }: Notes): string[] {
   );
 }
 
-function footBlocks({ columns, intervals, caution, failures, seeds, version }: Foot): string[] {
+function footBlocks({ columns, sweeps, intervals, comparison, failures, seeds, version }: Foot): string[] {
   const spread = seeds.least === seeds.most ? `${seeds.most}` : `${seeds.least} to ${seeds.most}`;
   const lines = [
     ...columns.map(({ column, meaning }) => `${column}: ${meaning}.`),
     `Seeds for each task: ${spread}.`,
+    ...sweeps,
     ...intervals,
-    caution,
+    ...comparison,
     failures,
     `Made by onebatch ${version}.`,
   ];

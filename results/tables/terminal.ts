@@ -1,9 +1,15 @@
 import { styleText } from 'node:util';
 import type { Comparison } from '../comparison.js';
 import type { Note, Notes } from '../notes.js';
+import type { OverallScores } from '../overall.js';
+import type { Ranks } from '../ranks.js';
+import type { ReferenceBlock } from '../reference.js';
+import type { MethodScores } from '../section.js';
+import { referenceRows } from './reference-rows.js';
 import { layOutOverall, layOutSections, type TextTable } from './terminal-layout.js';
+import { layOutReference } from './terminal-reference.js';
 import { oneLine, truncateText, wrapText } from './text-width.js';
-import { bestVisibleLabel, describeSection, describeTasks } from './words.js';
+import { bestVisibleLabel, describeSection, describeTasks, describeTop } from './words.js';
 
 /** Columns that the terminal's tables never exceed. */
 export const terminalWidth = 100;
@@ -12,25 +18,32 @@ export const terminalWidth = 100;
 export interface TerminalOptions {
   /** Whether headings are bold and the foot dim; plain text unless true. */
   readonly style?: boolean;
+  /** Whether each task has its table against the reference, and not a line of verdicts only. */
+  readonly full?: boolean;
 }
 
 type Emphasis = (kind: 'bold' | 'dim', line: string) => string;
 
 /**
- * A comparison for the terminal: a table for each section, all with the same columns, one over all tasks, and the
- * foot. No line is wider than 100 columns.
+ * A comparison for the terminal: a table for each section, all with the same columns, one over all tasks, methods
+ * against the reference, and the foot. No line is wider than 100 columns.
  */
 export function renderTerminal(comparison: Comparison, options: TerminalOptions = {}): string {
   const { sections, overall, notes } = comparison;
+  const full = options.full === true || sections.length === 1;
   const emphasize: Emphasis = (kind, line) =>
     options.style === true ? styleText(kind, line, { validateStream: false }) : line;
   const tables = layOutSections(sections, terminalWidth);
   const blocks = [
     introduce(sections.some(({ bestVisible }) => bestVisible.interval !== null)),
     ...sections.map((section, i) => [
-      ...headSection(section.task, describeSection(section), emphasize),
+      ...headSection(`${section.task} · ${describeTop(section.top)}`, describeSection(section), emphasize),
       ...drawTable(tables[i]!, emphasize),
-      ...listNotes(notes, ({ task, curtain }) => task === section.task && curtain === section.curtain),
+      ...(full ? drawReference(section.reference, section.methods, null, emphasize) : []),
+      ...listNotes(
+        full ? { ...notes, verdicts: [] } : notes,
+        ({ task, curtain }) => task === section.task && curtain === section.curtain,
+      ),
     ]),
     ...(overall === null
       ? []
@@ -46,7 +59,8 @@ export function renderTerminal(comparison: Comparison, options: TerminalOptions 
               emphasize,
             ),
             ...drawTable(layOutOverall(overall, terminalWidth), emphasize),
-            ...listNotes(notes, ({ task }) => task === null),
+            ...drawReference(overall.reference, overall.methods, overall.ranks, emphasize),
+            ...listNotes({ ...notes, verdicts: [] }, ({ task }) => task === null),
           ],
         ]),
     explain(comparison).map((line) => emphasize('dim', line)),
@@ -66,7 +80,6 @@ function headSection(title: string, facts: readonly string[], emphasize: Emphasi
   return [
     emphasize('bold', truncateText(oneLine(title), terminalWidth)),
     ...wrapText(oneLine(facts.join(' · ')), terminalWidth),
-    '',
   ];
 }
 
@@ -77,9 +90,24 @@ function drawTable({ head, rows, lineToBeat }: TextTable, emphasize: Emphasis): 
   ];
 }
 
-function listNotes({ better, fooled, failed, incomplete }: Notes, wanted: (note: Note) => boolean): string[] {
+function drawReference(
+  block: ReferenceBlock | null,
+  scores: readonly (MethodScores | OverallScores)[],
+  ranks: Ranks | null,
+  emphasize: Emphasis,
+): string[] {
+  if (block === null) return [];
+  const [head, ...lines] = layOutReference(referenceRows(block, scores, ranks), terminalWidth);
+  const title = truncateText(oneLine(`Against ${block.method}, by ${block.score}:`), terminalWidth);
+  return ['', title, emphasize('bold', head!), ...lines];
+}
+
+function listNotes(
+  { verdicts, fooled, failed, incomplete }: Notes,
+  wanted: (note: Note) => boolean,
+): string[] {
   const lines = [
-    ...better.filter(wanted).map(({ text }) => `+ ${text}`),
+    ...verdicts.filter(wanted).map(({ text }) => `= ${text}`),
     ...fooled.filter(wanted).map(({ text }) => `! ${text}`),
     ...failed.filter(wanted).map(({ text }) => `x ${text}`),
     ...incomplete.filter(wanted).map(({ text }) => `? ${text}`),
@@ -88,12 +116,13 @@ function listNotes({ better, fooled, failed, incomplete }: Notes, wanted: (note:
 }
 
 function explain({ foot }: Comparison): string[] {
-  const columns = foot.columns.filter(({ column }) => column !== 'distinct');
+  const columns = foot.columns.filter(({ column }) => column !== 'distinct' && column !== 'IQM');
   const width = Math.max(...columns.map(({ column }) => column.length));
   return [
     ...columns.map(({ column, meaning }) => `${column.padEnd(width)}  ${meaning}`),
+    ...foot.sweeps,
     ...foot.intervals,
-    foot.caution,
+    ...foot.comparison,
     foot.failures,
     `onebatch ${foot.version}`,
   ].flatMap((line) => wrapText(oneLine(line), terminalWidth, '  '));

@@ -42,9 +42,10 @@ export function estimateColumn(
   name: string,
   estimates: readonly (Estimate | null)[],
   { decimals, exponentDecimals, between }: NumberStyle,
+  format: typeof formatScore = formatScore,
 ): TextColumn {
   const show = (value: number | undefined): string =>
-    value === undefined ? '' : formatScore(value, decimals, exponentDecimals);
+    value === undefined ? '' : format(value, decimals, exponentDecimals);
   const values = estimates.map((estimate) => show(estimate?.value));
   const lows = estimates.map((estimate) => show(estimate?.interval?.low));
   const highs = estimates.map((estimate) => show(estimate?.interval?.high));

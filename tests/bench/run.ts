@@ -1,5 +1,6 @@
 import { cpus } from 'node:os';
 import { benchCells } from './cells.js';
+import { benchCompare } from './compare.js';
 import { benchGaussianProcess } from './gaussian-process.js';
 import { benchNetworks } from './networks.js';
 
@@ -10,3 +11,4 @@ process.stdout.write('medians of 5 runs; ratios within this run\n\n');
 await benchNetworks();
 await benchGaussianProcess();
 await benchCells();
+await benchCompare();

@@ -83,7 +83,7 @@ describe.concurrent('bad input gets one clear line, exit code 2, and nothing is 
     [
       'a command that does not exist',
       ['rehears'],
-      'there is no command "rehears"; did you mean "rehearse"? There is: rehearse, list\n',
+      'there is no command "rehears"; did you mean "rehearse"? There is: rehearse, compare, guard, list\n',
     ],
     [
       'a section that does not exist',

@@ -36,7 +36,24 @@ describe('readRehearsal', () => {
     expect([plan.seeds, out, workers]).toEqual([7, 'barn', 3]);
   });
 
+  test('until decided, allows eight rounds of the seeds, and looks after each', async () => {
+    const { plan } = await read({ untilDecided: true });
+    expect([plan.seeds, plan.looks]).toEqual([32, [4, 8, 12, 16, 20, 24, 28, 32]]);
+    const { plan: other } = await read({ untilDecided: true, seeds: '6', mostSeeds: '15' });
+    expect([other.seeds, other.looks]).toEqual([15, [6, 12, 15]]);
+  });
+
+  test('a plan whose seeds are all run names no looks', async () => {
+    expect((await read({})).plan).not.toHaveProperty('looks');
+  });
+
   test.each<[RehearseArguments, string]>([
+    [{ mostSeeds: '9' }, '--most-seeds: needs --until-decided; without it, say --seeds'],
+    [{ untilDecided: true, mostSeeds: '0' }, '--most-seeds: is "0", must be a whole number from 1 to 100000'],
+    [
+      { untilDecided: true, mostSeeds: '3' },
+      '--most-seeds: is 3, fewer than the 4 seeds of a round; give --seeds a smaller number',
+    ],
     [{ seeds: '-1' }, '--seeds: is "-1", must be a whole number from 1 to 100000'],
     [{ seeds: '0' }, '--seeds: is "0", must be a whole number from 1 to 100000'],
     [{ seeds: '1.5' }, '--seeds: is "1.5", must be a whole number from 1 to 100000'],

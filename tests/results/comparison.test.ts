@@ -1,5 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import type { CellRow } from '../../harness/row.js';
 import { type Comparison, compareRows } from '../../results/comparison.js';
 import { makeRow, makeSeconds, type RowParts } from './made-ledger.js';
 
@@ -41,14 +42,15 @@ describe('compareRows(rows, options): one task', () => {
     expect(interval!.high).toBeCloseTo(0.8 + (4.303 * 0.1) / Math.sqrt(3), 4);
   });
 
-  it('gives a BCa interval from 8 seeds on, and none for one seed', () => {
+  it('gives a transformed interval from 8 seeds on, and none for one seed', () => {
     const bests = [0.5, 0.6, 0.7, 0.8, 0.9, 0.4, 0.55, 0.62];
     const many = methodOf(compareRows(makeMethod('a', bests), { version, resamples: 200 }), 'a').best;
-    expect(many.interval!.method).toBe('bca');
+    expect(many.interval!.method).toBe('transformed-t');
     const one = compareRows(makeMethod('a', [0.5]), { version });
     expect(methodOf(one, 'a').best).toEqual({ value: 0.5, n: 1, interval: null });
     expect(one.sections[0]!.bestVisible.interval).toBeNull();
-    expect(one.notes.better).toEqual([]);
+    expect(one.sections[0]!.reference).toBeNull();
+    expect(one.notes.verdicts).toEqual([]);
   });
 
   it('takes optimism over the cells that stated a belief, and says how many', () => {
@@ -121,13 +123,22 @@ describe('compareRows(rows, options): all tasks', () => {
     expect(a.best.interquartileMean.value).toBeCloseTo(0.6, 12);
   });
 
-  it('gives intervals by the bootstrap within tasks, which stay inside the range of task means', () => {
+  it('gives means the interval of Satterthwaite: s²/n 0.0025 and 0.0967/4, 3.54 degrees of freedom', () => {
+    // √(0.0025 + 0.02417) / 2 = 0.0816 times t₀.₉₇₅ between the printed 3.182 (3) and 2.776 (4).
     const { low, high, method } = a.best.mean.interval!;
-    expect(method).toBe('stratified-percentile');
-    expect(low).toBeGreaterThanOrEqual((0.1 + 0.6) / 2);
-    expect(high).toBeLessThanOrEqual((0.2 + 1.3) / 2);
-    expect(low).toBeLessThan(0.5);
-    expect(high).toBeGreaterThan(0.5);
+    expect(method).toBe('stratified-t');
+    expect((low + high) / 2).toBeCloseTo(0.5, 12);
+    expect((high - low) / 2).toBeGreaterThan(0.0816 * 2.776);
+    expect((high - low) / 2).toBeLessThan(0.0817 * 3.182);
+  });
+
+  it('gives interquartile means the bootstrap within tasks', () => {
+    const { low, high, method } = a.best.interquartileMean.interval!;
+    expect(method).toBe('stratified-expanded-percentile');
+    expect(low).toBeGreaterThanOrEqual(0.1);
+    expect(high).toBeLessThanOrEqual(1.3);
+    expect(low).toBeLessThan(0.6);
+    expect(high).toBeGreaterThan(0.6);
   });
 
   it('gives no interval where a task has a single cell', () => {
@@ -163,14 +174,17 @@ describe('compareRows(rows, options): notes', () => {
     makeRow({ method: 'naive', seed, best: 0.4, optimism }),
   );
 
-  it('names as better exactly the methods whose interval of the lift lies above 0', () => {
-    const { better } = compareRows([...careful, ...naive, ...makeMethod('wide', [0.1, 1.9, 0.6, 0.9])], {
-      version,
-    }).notes;
-    expect(better).toHaveLength(1);
-    expect(better[0]!.methods).toEqual(['careful']);
-    // Mean lift 0.1175, deviation 0.01708, t(3) = 3.182 of the printed tables: ± 0.0272.
-    expect(better[0]!.text).toContain('careful +0.12 [+0.09, +0.14]');
+  it('tells the verdicts against the reference of each task, with differences and intervals', () => {
+    const few = { version, against: 'careful' };
+    const worse = makeMethod('worse', [0.4, 0.41, 0.45, 0.43]);
+    // Four pairs allow no p below 2/16, so nothing can be decided.
+    expect(compareRows([...careful, ...worse], few).notes.verdicts.map(({ text }) => text)).toEqual([
+      'against careful on hartmann-6: undecided: all 1, the nearest (worse) at about 6 seeds',
+    ]);
+    const more = (rows: readonly CellRow[]) => [...rows, ...rows].map((row, i) => ({ ...row, seed: i }));
+    const [note] = compareRows([...more(careful), ...more(worse)], few).notes.verdicts;
+    // −0.30, −0.31, −0.29, −0.28, each twice: deviation 0.01195, t(7) = 2.365 of the printed tables: ± 0.0100.
+    expect(note!.text).toBe('against careful on hartmann-6: hurts worse -0.295 [-0.305, -0.285]');
   });
 
   it('names as fooled the most optimistic method whose optimism excludes 0 and did not pay', () => {
@@ -186,10 +200,6 @@ describe('compareRows(rows, options): notes', () => {
     expect(compareRows([...careful, ...unsure], { version }).notes.fooled).toEqual([]);
     const winner = naive.map((row) => ({ ...row, best: 0.95, lift: 0.35 }));
     expect(compareRows([...careful, ...winner], { version }).notes.fooled).toEqual([]);
-  });
-
-  it('says that its intervals are no tests between methods', () => {
-    expect(compareRows(careful, { version }).foot.caution).toMatch(/not paired tests.*not corrected/);
   });
 });
 
@@ -228,7 +238,8 @@ describe('compareRows(rows, options): determinism', () => {
   });
 
   it('draws other resamples for another seed', () => {
-    const low = (seed: number) => methodOf(compareRows(rows, { ...options, seed }), 'a').best.interval!.low;
+    const low = (seed: number) =>
+      compareRows(rows, { ...options, seed }).overall!.methods[0]!.best.interquartileMean.interval!.low;
     expect(low(1)).not.toBe(low(0));
   });
 

@@ -25,7 +25,9 @@ const plan: Value = {
     'scripted',
     { method: 'scripted', as: 's', settings: { search: { steps: 4 } } },
     { surrogate: 'ridge', search: 'genetic', caution: 'none', settings: { surrogate: { width: 3 } } },
+    { method: 'scripted', as: 'w', sweep: { script: ['good', 'slow'], search: { steps: [1, 2] } } },
   ],
+  choose: { on: 'tasks' },
 };
 
 const odd: fc.Arbitrary<Value> = fc.oneof(

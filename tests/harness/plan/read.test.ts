@@ -5,7 +5,7 @@ import { toyCatalogue } from '../toy-catalogue.js';
 import { toyPlan } from '../toy-plan.js';
 
 const keys =
-  'name, seed, methodSeed, seeds, pool, batch, budgetSeconds, backend, keep, tasks, curtains, methods';
+  'name, seed, methodSeed, seeds, pool, batch, budgetSeconds, backend, keep, tasks, curtains, methods, choose';
 const good = { tasks: 'tasks: [slope]', methods: 'methods: [scripted]' };
 
 /** The lines that a plan is refused with. */

@@ -31,6 +31,7 @@ describe('tableFormats', () => {
       'comparison.csv',
       'comparison.md',
       'comparison.json',
+      'comparison.tex',
     ]);
     for (const { render } of tableFormats) expect((await render(smallComparison)).endsWith('\n')).toBe(true);
   });

@@ -28,6 +28,15 @@ describe('renderMarkdown(comparison)', () => {
       | **best visible** (line to beat) | 0.610 \\[0.585, 0.635\\] | – | – | – | – | – | – |
       | naive | 0.400 \\[0.152, 0.648\\] | 0.200 \\[-0.048, 0.448\\] | -0.210 \\[-0.472, +0.052\\] | +0.550 \\[-0.085, +1.185\\] | 1/3 | 128 | 2.0 |
 
+      Against careful, by best:
+
+      | method | difference | p | verdict | w/t/l | beat visible |
+      | :--- | ---: | ---: | ---: | ---: | ---: |
+      | careful | – | – | reference | – | 100 % \\[44, 100\\] |
+      | naive | -0.400 \\[-0.830, +0.030\\] | 0.250 | undecided (6) | 0/0/3 | 0 % \\[0, 56\\] |
+
+      True scores, normalized: 0 is the worst design of the pool, 1 the top; brackets hold 95 % intervals. 3 seeds. difference: best minus that of careful on the same seed, 3 pairs. p: sign-flip test, Holm-corrected for 1 test. verdict at 0.05, margin ±0.02; in parentheses the seeds a task that would decide at 80 % power. 1 of 6 cells failed, counted as batches of the worst visible design. curtain: ceiling=0.5. top: published optimum. onebatch 0.1.0.
+
       ## nk(20, 3)
 
       curtain ceiling=0.5 · 3 seeds · batch of 128 · 200 visible rows · 1 = best known score
@@ -38,20 +47,33 @@ describe('renderMarkdown(comparison)', () => {
       | **best visible** (line to beat) | 0.610 \\[0.585, 0.635\\] | – | – | – | – | – | – |
       | naive | 0.500 \\[0.252, 0.748\\] | 0.200 \\[-0.048, 0.448\\] | -0.110 \\[-0.372, +0.152\\] | +0.600 \\[+0.352, +0.848\\] | 0/3 | 128 | 2.0 |
 
+      Against careful, by best:
+
+      | method | difference | p | verdict | w/t/l | beat visible |
+      | :--- | ---: | ---: | ---: | ---: | ---: |
+      | careful | – | – | reference | – | 100 % \\[44, 100\\] |
+      | naive | -0.400 \\[-0.830, +0.030\\] | 0.250 | undecided (6) | 0/0/3 | 0 % \\[0, 56\\] |
+
+      True scores, normalized: 0 is the worst design of the pool, 1 the top; brackets hold 95 % intervals. 3 seeds. difference: best minus that of careful on the same seed, 3 pairs. p: sign-flip test, Holm-corrected for 1 test. verdict at 0.05, margin ±0.02; in parentheses the seeds a task that would decide at 80 % power. 0 of 6 cells failed, counted as batches of the worst visible design. curtain: ceiling=0.5. top: best known score. onebatch 0.1.0.
+
       ## All tasks
 
       2 tasks · mean of the tasks' means · IQM: interquartile mean over all cells
 
       | method | best | IQM of best | median | IQM of median | lift | optimism | failed | distinct | seconds |
       | :--- | ---: | ---: | ---: | ---: | ---: | ---: | ---: | ---: | ---: |
-      | careful | 0.850 \\[0.783, 0.917\\] | 0.850 \\[0.783, 0.933\\] | 0.600 \\[0.533, 0.667\\] | 0.600 \\[0.517, 0.683\\] | +0.240 \\[+0.180, +0.300\\] | – | 0/6 | 128 | 2.0 |
-      | **best visible** (line to beat) | 0.610 \\[0.603, 0.617\\] | 0.610 \\[0.602, 0.618\\] | – | – | – | – | – | – | – |
-      | naive | 0.450 \\[0.383, 0.517\\] | 0.450 \\[0.383, 0.517\\] | 0.200 \\[0.133, 0.267\\] | 0.200 \\[0.117, 0.283\\] | -0.160 \\[-0.230, -0.090\\] | +0.575 \\[+0.517, +0.633\\] | 1/6 | 128 | 2.0 |
+      | careful | 0.850 \\[0.737, 0.963\\] | 0.850 \\[0.750, 0.950\\] | 0.600 \\[0.487, 0.713\\] | 0.600 \\[0.500, 0.700\\] | +0.240 \\[+0.138, +0.342\\] | – | 0/6 | 128 | 2.0 |
+      | **best visible** (line to beat) | 0.610 \\[0.599, 0.621\\] | 0.610 \\[0.600, 0.620\\] | – | – | – | – | – | – | – |
+      | naive | 0.450 \\[0.337, 0.563\\] | 0.450 \\[0.350, 0.550\\] | 0.200 \\[0.087, 0.313\\] | 0.200 \\[0.100, 0.300\\] | -0.160 \\[-0.279, -0.041\\] | +0.575 \\[+0.451, +0.699\\] | 1/6 | 128 | 2.0 |
 
-      ## Better than best visible
+      Against careful, by best:
 
-      - interval of the lift above 0 on nk(20, 3): careful +0.29 \\[+0.07, +0.51\\].
-      - interval of the lift above 0 on the mean of all tasks: careful +0.24 \\[+0.18, +0.30\\].
+      | method | difference | p | verdict | w/t/l | rank | beat visible |
+      | :--- | ---: | ---: | ---: | ---: | ---: | ---: |
+      | careful | – | – | reference | – | 1.00 | 100 % \\[61, 100\\] |
+      | naive | -0.400 \\[-0.596, -0.204\\] | 0.031 | hurts | 0/0/6 | 2.00 | 0 % \\[0, 39\\] |
+
+      True scores, normalized: 0 is the worst design of the pool, 1 the top; brackets hold 95 % intervals. 3 seeds a task. difference: best minus that of careful on the same seed, 6 pairs. p: sign-flip test, Holm-corrected for 1 test. verdict at 0.05, margin ±0.02; in parentheses the seeds a task that would decide at 80 % power. 1 of 12 cells failed, counted as batches of the worst visible design. curtains: ceiling=0.5. top: published optimum or best known score. onebatch 0.1.0.
 
       ## Fooled by its own model
 
@@ -73,9 +95,15 @@ describe('renderMarkdown(comparison)', () => {
       - seconds: wall-clock time of one cell, mean.
       - Seeds for each task: 3.
       - 95 % intervals of means over fewer than 8 seeds: Student's t, which supposes normal scores.
-      - 95 % intervals over all tasks: percentile bootstrap over the seeds within each task, 2,000 resamples (Agarwal et al. 2021); too short with fewer than 8 seeds a task.
-      - Each interval is of one method: they are not paired tests between methods, and are not corrected for the number of methods.
-      - A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.
+      - 95 % intervals of means over all tasks: t with Satterthwaite's degrees of freedom (Satterthwaite 1946).
+      - 95 % intervals of the IQM: bootstrap over the seeds within each task (Agarwal et al. 2021), 2,000 resamples, expanded percentiles (Hesterberg 2015).
+      - difference: best minus that of careful, paired by task, curtain and seed, 3 pairs a task, 6 pairs over all tasks; 95 % intervals, each for its own method and not corrected for their number: Student's t, over all tasks t with Satterthwaite's degrees of freedom.
+      - p: two-sided sign-flip test (Fisher 1935) by all patterns of signs up to 16 pairs and 20,000 drawn ones beyond, corrected for the 1 test of a table (Holm 1979).
+      - verdict: helps or hurts: p \\< 0.05 and the interval excludes 0; no real difference: within ±0.02 by two one-sided t tests (Schuirmann 1987), Holm-corrected as a family of their own, p \\< 0.05; undecided: neither, with the seeds a task that would decide at 80 % power if more are like these.
+      - w/t/l: pairs won, tied and lost, with the difference above, within and below ±0.02; beat visible: cells with a design better than the best visible one (Wilson 1927).
+      - 3 pairs and 1 test allow no p below 0.250: to help or hurt on a single task takes 6 seeds at least.
+      - rank: mean over 2 tasks, 1 is best, ties averaged; Friedman's test, F(1, 1) = infinite by Iman \\& Davenport (1980), p = 0.500; ranks closer than the critical difference can't be told apart at 5 % (Nemenyi 1963; Demšar 2006), here 1.39, more than any two of 2 can differ by: too few tasks to tell methods apart by rank. Not told apart: careful, naive.
+      - 1 of 12 cells failed. A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but that of optimism.
       - Made by onebatch 0.1.0.
       "
     `);

@@ -17,52 +17,67 @@ describe('renderTerminal(comparison, options)', () => {
       "True scores, 0 = worst design of the pool, 1 = top. Brackets hold 95 % intervals. Methods above the
       line "best visible" found, on average, better designs than the table held.
 
-      hartmann-6
-      curtain ceiling=0.5 · 3 seeds · batch of 128 · 200 visible rows · 1 = published optimum
-
+      hartmann-6 · 1 = published optimum
+      curtain ceiling=0.5 · 3 seeds · batch of 128 · 200 visible rows
       method         best [95 %]          median [95 %]             lift  optimism  failed  seconds
       careful       0.800 [0.552, 1.048]   0.600 [ 0.352, 0.848]  +0.190         –     0/3      2.0
       best visible  0.610 [0.585, 0.635]  ── line to beat ─────────────────────────────────────────
       naive         0.400 [0.152, 0.648]   0.200 [-0.048, 0.448]  -0.210    +0.550     1/3      2.0
 
+      = against careful on hartmann-6: undecided: all 1, the nearest (naive) at about 6 seeds
       x naive failed 1 of 3 cells on hartmann-6: out of time after 20 s
 
-      nk(20, 3)
-      curtain ceiling=0.5 · 3 seeds · batch of 128 · 200 visible rows · 1 = best known score
-
+      nk(20, 3) · 1 = best known score
+      curtain ceiling=0.5 · 3 seeds · batch of 128 · 200 visible rows
       method         best [95 %]          median [95 %]             lift  optimism  failed  seconds
       careful       0.900 [0.652, 1.148]   0.600 [ 0.352, 0.848]  +0.290         –     0/3      2.0
       best visible  0.610 [0.585, 0.635]  ── line to beat ─────────────────────────────────────────
       naive         0.500 [0.252, 0.748]   0.200 [-0.048, 0.448]  -0.110    +0.600     0/3      2.0
 
-      + interval of the lift above 0 on nk(20, 3): careful +0.29 [+0.07, +0.51]
+      = against careful on nk(20, 3): undecided: all 1, the nearest (naive) at about 6 seeds
       ! naive believed its batch 0.60 [0.35, 0.85] above the truth on nk(20, 3), and its best design fell
         0.11 short of the best visible one on average
 
       All tasks
       2 tasks · mean of the tasks' means · IQM: interquartile mean of best over all cells
-
       method         best [95 %]            IQM [95 %]          median    lift  optimism  failed  seconds
-      careful       0.850 [0.783, 0.917]  0.850 [0.783, 0.933]   0.600  +0.240         –     0/6      2.0
-      best visible  0.610 [0.603, 0.617]  0.610 [0.602, 0.618]  ── line to beat ─────────────────────────
-      naive         0.450 [0.383, 0.517]  0.450 [0.383, 0.517]   0.200  -0.160    +0.575     1/6      2.0
+      careful       0.850 [0.737, 0.963]  0.850 [0.750, 0.950]   0.600  +0.240         –     0/6      2.0
+      best visible  0.610 [0.599, 0.621]  0.610 [0.600, 0.620]  ── line to beat ─────────────────────────
+      naive         0.450 [0.337, 0.563]  0.450 [0.350, 0.550]   0.200  -0.160    +0.575     1/6      2.0
 
-      + interval of the lift above 0 on the mean of all tasks: careful +0.24 [+0.18, +0.30]
+      Against careful, by best:
+      method   difference [95 %]                p  verdict    w/t/l  rank     beat visible
+      careful                                      reference          1.0  100 % [61, 100]
+      naive        -0.400 [-0.596, -0.204]  0.031  hurts      0/0/6   2.0      0 % [0, 39]
 
       best      highest true score of the batch (100th percentile), mean over seeds
       median    median true score of the batch (50th percentile), mean over seeds
-      IQM       interquartile mean of best over the cells of all tasks
       lift      best minus best visible: what the batch gained over the table
       optimism  believed minus true score, mean over the batch; – if no belief was stated
       failed    cells that failed, of how many; a cell is one method on one task with one seed
       seconds   wall-clock time of one cell, mean
       95 % intervals of means over fewer than 8 seeds: Student's t, which supposes normal scores.
-      95 % intervals over all tasks: percentile bootstrap over the seeds within each task, 2,000 resamples
-        (Agarwal et al. 2021); too short with fewer than 8 seeds a task.
-      Each interval is of one method: they are not paired tests between methods, and are not corrected for
-        the number of methods.
-      A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but
-        that of optimism.
+      95 % intervals of means over all tasks: t with Satterthwaite's degrees of freedom (Satterthwaite
+        1946).
+      95 % intervals of the IQM: bootstrap over the seeds within each task (Agarwal et al. 2021), 2,000
+        resamples, expanded percentiles (Hesterberg 2015).
+      difference: best minus that of careful, paired by task, curtain and seed, 3 pairs a task, 6 pairs
+        over all tasks; 95 % intervals, each for its own method and not corrected for their number:
+        Student's t, over all tasks t with Satterthwaite's degrees of freedom.
+      p: two-sided sign-flip test (Fisher 1935) by all patterns of signs up to 16 pairs and 20,000 drawn
+        ones beyond, corrected for the 1 test of a table (Holm 1979).
+      verdict: helps or hurts: p < 0.05 and the interval excludes 0; no real difference: within ±0.02 by
+        two one-sided t tests (Schuirmann 1987), Holm-corrected as a family of their own, p < 0.05;
+        undecided: neither, with the seeds a task that would decide at 80 % power if more are like these.
+      w/t/l: pairs won, tied and lost, with the difference above, within and below ±0.02; beat visible:
+        cells with a design better than the best visible one (Wilson 1927).
+      3 pairs and 1 test allow no p below 0.250: to help or hurt on a single task takes 6 seeds at least.
+      rank: mean over 2 tasks, 1 is best, ties averaged; Friedman's test, F(1, 1) = infinite by Iman &
+        Davenport (1980), p = 0.500; ranks closer than the critical difference can't be told apart at 5 %
+        (Nemenyi 1963; Demšar 2006), here 1.39, more than any two of 2 can differ by: too few tasks to
+        tell methods apart by rank. Not told apart: careful, naive.
+      1 of 12 cells failed. A failed cell counts as a batch of copies of the worst visible design; it
+        stays in every mean but that of optimism.
       onebatch 0.1.0
       "
     `);
@@ -77,13 +92,17 @@ describe('renderTerminal(comparison, options)', () => {
       "True scores, 0 = worst design of the pool, 1 = top. Methods above the line "best visible" found, on
       average, better designs than the table held.
 
-      hartmann-6
-      curtain ceiling=0.5 · 1 seed · batch of 128 · 200 visible rows · 1 = published optimum
-
+      hartmann-6 · 1 = published optimum
+      curtain ceiling=0.5 · 1 seed · batch of 128 · 200 visible rows
       method         best  median    lift  optimism  failed  seconds
       careful       0.700   0.500  +0.100         –     0/1        –
       best visible  0.600  ── line to beat ─────────────────────────
       naive         0.400   0.200  -0.200    +0.500     0/1        –
+
+      Against careful, by best:
+      method   difference      p  verdict             w/t/l     beat visible
+      careful                     reference                  100 % [21, 100]
+      naive        -0.300  1.000  undecided (1 seed)  0/0/1      0 % [0, 79]
 
       best      highest true score of the batch (100th percentile), mean over seeds
       median    median true score of the batch (50th percentile), mean over seeds
@@ -92,10 +111,17 @@ describe('renderTerminal(comparison, options)', () => {
       failed    cells that failed, of how many; a cell is one method on one task with one seed
       seconds   wall-clock time of one cell, mean
       No interval where there is a single cell.
-      Each interval is of one method: they are not paired tests between methods, and are not corrected for
-        the number of methods.
-      A failed cell counts as a batch of copies of the worst visible design; it stays in every mean but
-        that of optimism.
+      difference: best minus that of careful, paired by task, curtain and seed, 1 pair a task.
+      p: two-sided sign-flip test (Fisher 1935) by all patterns of signs up to 16 pairs and 20,000 drawn
+        ones beyond, corrected for the 1 test of a table (Holm 1979).
+      verdict: helps or hurts: p < 0.05 and the interval excludes 0; no real difference: within ±0.02 by
+        two one-sided t tests (Schuirmann 1987), Holm-corrected as a family of their own, p < 0.05;
+        undecided: neither, with the seeds a task that would decide at 80 % power if more are like these.
+      w/t/l: pairs won, tied and lost, with the difference above, within and below ±0.02; beat visible:
+        cells with a design better than the best visible one (Wilson 1927).
+      1 pair and 1 test allow no p below 1.000: to help or hurt on a single task takes 6 seeds at least.
+      0 of 2 cells failed. A failed cell counts as a batch of copies of the worst visible design; it stays
+        in every mean but that of optimism.
       onebatch 0.1.0
       "
     `);
@@ -115,7 +141,7 @@ describe('renderTerminal(comparison, options)', () => {
     ]);
     const text = renderTerminal(compareRows(rows, { version }));
     expect(text).toContain(`\n${label} `);
-    expect(text.split('\n').slice(6, 10).join('\n')).toMatchInlineSnapshot(`
+    expect(text.split('\n').slice(5, 9).join('\n')).toMatchInlineSnapshot(`
       "method                         best [95 %]      median [95 %]         lift optimism failed seconds
       conservative-with-a-long-label 0.90 [0.90 0.90]  -0.30 [-0.55 -0.05] +0.30    +13.3    0/3       –
       best visible                   0.60 [0.60 0.60] ── line to beat ──────────────────────────────────
@@ -164,7 +190,7 @@ describe('renderTerminal(comparison, options)', () => {
     const rows = [makeRow({ method: 'evil\n\u001b[31m', task: 'two\nlines', curtain: 'a\tb', seed: 0 })];
     const text = renderTerminal(compareRows(rows, { version }));
     expect(stripVTControlCharacters(text)).toBe(text);
-    expect(text).toContain('\ntwo lines\ncurtain a b ·');
+    expect(text).toContain('\ntwo lines · 1 = published optimum\ncurtain a b ·');
   });
 
   it('adds nothing but bold and dim when asked for style', () => {
