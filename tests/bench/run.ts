@@ -1,4 +1,5 @@
 import { cpus } from 'node:os';
+import { benchBackends } from './backends.js';
 import { benchCells } from './cells.js';
 import { benchCompare } from './compare.js';
 import { benchGaussianProcess } from './gaussian-process.js';
@@ -10,5 +11,6 @@ process.stdout.write(
 process.stdout.write('medians of 5 runs; ratios within this run\n\n');
 await benchNetworks();
 await benchGaussianProcess();
+await benchBackends();
 await benchCells();
 await benchCompare();
