@@ -1,5 +1,5 @@
 import { entryBytes } from './lists';
-import { fours, hiddenLayers, layerBytes, parameterBytes, transposedOffset, widthOf } from './shape';
+import { eights, fours, hiddenLayers, layerBytes, parameterBytes, transposedOffset, widthOf } from './shape';
 import { features, listing } from './space';
 import { transposeWeights } from './transpose';
 import { workspaceBytes } from './workspace';
@@ -29,6 +29,9 @@ export let memberShares: usize = 0;
 export let heads: usize = 0;
 
 export let lists: usize = 0;
+
+/** Room for four rows of any layer. */
+export let tile: usize = 0;
 
 /** Room for the first layer's biases as listed rows need them. */
 export let firstBiases: usize = 0;
@@ -78,10 +81,17 @@ function layOut(shapeAt: usize, count: i32, rows: i32, scratch: usize): usize {
   memberGradients = memberOutputs + each * ((<usize>rows) << 2);
   memberShares = memberGradients + each * layerBytes(rows, widthOf(shapeAt, 0));
   firstBiases = memberShares + (((each + 1) & ~1) << 3);
-  heads = firstBiases + layerBytes(1, widthOf(shapeAt, 1));
+  tile = firstBiases + layerBytes(1, widthOf(shapeAt, 1));
+  heads = tile + ((<usize>eights(widestLayer(shapeAt))) << 4);
   lists = heads + (listing ? <usize>rows * entryBytes : 0);
   work = lists + (listing ? <usize>rows * <usize>features * entryBytes : 0);
   return work + workspaceBytes(shapeAt, rows);
+}
+
+function widestLayer(shapeAt: usize): i32 {
+  let widest = 0;
+  for (let l = 0; l <= hiddenLayers(shapeAt); l++) widest = max(widest, widthOf(shapeAt, l));
+  return widest;
 }
 
 export function parametersOf(member: i32): usize {

@@ -1,5 +1,5 @@
 import { listedForward, listedGradient, shiftedBiases } from './listed-layer';
-import { firstBiases, heads } from './networks';
+import { firstBiases, heads, tile } from './networks';
 import { outputUnit, throughOutputUnit } from './output-unit';
 import { asIs, asUnits, multiply, multiplyTransposed, sumRows, throughUnits } from './products';
 import { biasesOffset, eights, hiddenLayers, transposedOffset, weightsOffset, widthOf } from './shape';
@@ -20,7 +20,7 @@ export function forward(shape: usize, parameters: usize, work: usize, rows: i32,
       listedForward(heads, firstBiases, weights, to, rows, eights(inputs), panels, slope);
     } else {
       const from = activationsAt(shape, work, rows, layer - 1);
-      multiply(from, weights, to, rows, inputs, eights(inputs), panels, asUnits, biases, slope);
+      multiply(from, weights, to, rows, inputs, eights(inputs), panels, asUnits, biases, slope, tile);
     }
   }
   outputUnit(
@@ -94,6 +94,7 @@ export function backward(
         layer > 1 ? throughUnits : asIs,
         before,
         slope,
+        tile,
       );
     }
   }

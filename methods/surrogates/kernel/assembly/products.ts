@@ -1,4 +1,5 @@
 import { fours, panelBytes } from './shape';
+import { transposeTile } from './transpose';
 
 /** What follows a product: biases and leaky units, the units' derivative, or nothing. */
 export const asUnits: i32 = 0;
@@ -11,6 +12,7 @@ export const asIs: i32 = 2;
  * A has `rows` rows (a multiple of four) and `inner` columns, B `innerRows` rows (a multiple of eight, of which
  * `inner` are used), C as many rows as A and `panels` panels. With `asUnits`, `extra` holds B's biases and C becomes
  * the activations of leaky units; with `throughUnits`, `extra` holds activations, by whose slope C is multiplied.
+ * `tile` has room for four rows of A.
  */
 export function multiply(
   a: usize,
@@ -23,11 +25,14 @@ export function multiply(
   after: i32,
   extra: usize,
   slope: f32,
+  tile: usize,
 ): void {
   const stride = panelBytes(rows);
   const slopes = f32x4.splat(slope);
   const steps = fours(inner);
+  const end = tile + ((<usize>steps) << 4);
   for (let i = 0; i < rows; i += 4) {
+    packTile(a + ((<usize>i) << 5), stride, steps, tile);
     for (let p = 0; p < panels; p++) {
       let c00 = v128.splat<f32>(0);
       let c01 = c00;
@@ -41,31 +46,26 @@ export function multiply(
       let c21 = c01;
       let c30 = c00;
       let c31 = c01;
-      let from = a + ((<usize>i) << 5);
+      let at = tile;
       let by = b + <usize>p * ((<usize>innerRows) << 5);
-      for (let left = steps; left > 0; left -= 8) {
-        let at = from;
-        const end = at + ((<usize>min(left, 8)) << 2);
-        do {
-          const b0 = v128.load(by);
-          const b1 = v128.load(by, 16);
-          const a0 = v128.load_splat<f32>(at);
-          c00 = f32x4.add(c00, f32x4.mul(a0, b0));
-          c01 = f32x4.add(c01, f32x4.mul(a0, b1));
-          const a1 = v128.load_splat<f32>(at, 32);
-          c10 = f32x4.add(c10, f32x4.mul(a1, b0));
-          c11 = f32x4.add(c11, f32x4.mul(a1, b1));
-          const a2 = v128.load_splat<f32>(at, 64);
-          c20 = f32x4.add(c20, f32x4.mul(a2, b0));
-          c21 = f32x4.add(c21, f32x4.mul(a2, b1));
-          const a3 = v128.load_splat<f32>(at, 96);
-          c30 = f32x4.add(c30, f32x4.mul(a3, b0));
-          c31 = f32x4.add(c31, f32x4.mul(a3, b1));
-          by += 32;
-          at += 4;
-        } while (at < end);
-        from += stride;
-      }
+      do {
+        const b0 = v128.load(by);
+        const b1 = v128.load(by, 16);
+        const a0 = v128.load_splat<f32>(at);
+        c00 = f32x4.add(c00, f32x4.mul(a0, b0));
+        c01 = f32x4.add(c01, f32x4.mul(a0, b1));
+        const a1 = v128.load_splat<f32>(at, 4);
+        c10 = f32x4.add(c10, f32x4.mul(a1, b0));
+        c11 = f32x4.add(c11, f32x4.mul(a1, b1));
+        const a2 = v128.load_splat<f32>(at, 8);
+        c20 = f32x4.add(c20, f32x4.mul(a2, b0));
+        c21 = f32x4.add(c21, f32x4.mul(a2, b1));
+        const a3 = v128.load_splat<f32>(at, 12);
+        c30 = f32x4.add(c30, f32x4.mul(a3, b0));
+        c31 = f32x4.add(c31, f32x4.mul(a3, b1));
+        by += 32;
+        at += 16;
+      } while (at < end);
       const to = c + <usize>p * stride + ((<usize>i) << 5);
       if (after == asUnits) {
         v128.store(to, leaky(c00, slopes));
@@ -97,6 +97,13 @@ export function multiply(
         v128.store(to, c31, 112);
       }
     }
+  }
+}
+
+/** Puts four rows of A together, column by column, so that a product reads them in one stream. */
+function packTile(from: usize, stride: usize, columns: i32, tile: usize): void {
+  for (let k = 0; k < columns; k += 4) {
+    transposeTile(from + <usize>(k >> 3) * stride + ((<usize>(k & 4)) << 2), tile + ((<usize>k) << 4), 16);
   }
 }
 

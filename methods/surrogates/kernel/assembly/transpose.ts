@@ -19,13 +19,14 @@ export function transposeWeights(shape: usize, parameters: usize, transposed: us
 
 /** Transposes a block of 8 × 8 numbers that lie one after another. */
 function transposeBlock(from: usize, to: usize): void {
-  transposeQuarter(from, to);
-  transposeQuarter(from + 16, to + 128);
-  transposeQuarter(from + 128, to + 16);
-  transposeQuarter(from + 144, to + 144);
+  transposeTile(from, to, 32);
+  transposeTile(from + 16, to + 128, 32);
+  transposeTile(from + 128, to + 16, 32);
+  transposeTile(from + 144, to + 144, 32);
 }
 
-function transposeQuarter(from: usize, to: usize): void {
+/** Transposes a block of 4 × 4 numbers whose rows are 32 bytes apart, to rows `step` bytes apart. */
+export function transposeTile(from: usize, to: usize, step: usize): void {
   const r0 = v128.load(from);
   const r1 = v128.load(from, 32);
   const r2 = v128.load(from, 64);
@@ -35,7 +36,7 @@ function transposeQuarter(from: usize, to: usize): void {
   const high01 = v128.shuffle<f32>(r0, r1, 2, 6, 3, 7);
   const high23 = v128.shuffle<f32>(r2, r3, 2, 6, 3, 7);
   v128.store(to, v128.shuffle<f32>(low01, low23, 0, 1, 4, 5));
-  v128.store(to, v128.shuffle<f32>(low01, low23, 2, 3, 6, 7), 32);
-  v128.store(to, v128.shuffle<f32>(high01, high23, 0, 1, 4, 5), 64);
-  v128.store(to, v128.shuffle<f32>(high01, high23, 2, 3, 6, 7), 96);
+  v128.store(to + step, v128.shuffle<f32>(low01, low23, 2, 3, 6, 7));
+  v128.store(to + 2 * step, v128.shuffle<f32>(high01, high23, 0, 1, 4, 5));
+  v128.store(to + 3 * step, v128.shuffle<f32>(high01, high23, 2, 3, 6, 7));
 }
