@@ -30,7 +30,7 @@ export let heads: usize = 0;
 
 export let lists: usize = 0;
 
-/** Room for four rows of any layer. */
+/** Room for four rows or columns of any layer. */
 export let tile: usize = 0;
 
 /** Room for the first layer's biases as listed rows need them. */
@@ -82,7 +82,7 @@ function layOut(shapeAt: usize, count: i32, rows: i32, scratch: usize): usize {
   memberShares = memberGradients + each * layerBytes(rows, widthOf(shapeAt, 0));
   firstBiases = memberShares + (((each + 1) & ~1) << 3);
   tile = firstBiases + layerBytes(1, widthOf(shapeAt, 1));
-  heads = tile + ((<usize>eights(widestLayer(shapeAt))) << 4);
+  heads = tile + ((<usize>max(rows, eights(widestLayer(shapeAt)))) << 4);
   lists = heads + (listing ? <usize>rows * entryBytes : 0);
   work = lists + (listing ? <usize>rows * <usize>features * entryBytes : 0);
   return work + workspaceBytes(shapeAt, rows);

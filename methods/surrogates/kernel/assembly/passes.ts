@@ -79,7 +79,7 @@ export function backward(
       if (layer == 1 && listing) {
         listedGradient(heads, derivatives, biases, weights, rows, count, eights(inputs), panels);
       } else {
-        multiplyTransposed(before, derivatives, weights, rows, count, inputs, eights(inputs), panels);
+        multiplyTransposed(before, derivatives, weights, rows, count, inputs, eights(inputs), panels, tile);
       }
     }
     if (layer > 1 || toInputs) {

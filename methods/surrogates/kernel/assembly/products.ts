@@ -109,7 +109,8 @@ function packTile(from: usize, stride: usize, columns: i32, tile: usize): void {
 
 /**
  * C = Aᵀ · B over the first `count` of `rows` rows: the gradient of weights from activations A (`inputs` columns) and
- * derivatives B (`panels` panels). C has `eights(inputs)` rows, of which `fours(inputs)` are written.
+ * derivatives B (`panels` panels). C has `eights(inputs)` rows, of which `fours(inputs)` are written. `tile` has room
+ * for four columns of A; `count` is at least 1.
  */
 export function multiplyTransposed(
   a: usize,
@@ -120,15 +121,16 @@ export function multiplyTransposed(
   inputs: i32,
   outRows: i32,
   panels: i32,
+  tile: usize,
 ): void {
   const stride = panelBytes(rows);
   const end = fours(inputs);
-  for (let p = 0; p < panels; p++) {
-    const panel = b + <usize>p * stride;
-    const target = c + <usize>p * ((<usize>outRows) << 5);
-    for (let i = 0; i < end; i += 4) {
-      let at = a + <usize>(i >> 3) * stride + ((<usize>(i & 7)) << 2);
-      let by = panel;
+  const bottom = tile + ((<usize>count) << 4);
+  for (let i = 0; i < end; i += 4) {
+    packColumns(a + <usize>(i >> 3) * stride + ((<usize>(i & 4)) << 2), count, tile);
+    for (let p = 0; p < panels; p++) {
+      let at = tile;
+      let by = b + <usize>p * stride;
       let c00 = v128.splat<f32>(0);
       let c01 = c00;
       let c10 = c00;
@@ -137,7 +139,7 @@ export function multiplyTransposed(
       let c21 = c00;
       let c30 = c00;
       let c31 = c00;
-      for (let k = 0; k < count; k++) {
+      do {
         const b0 = v128.load(by);
         const b1 = v128.load(by, 16);
         const a0 = v128.load_splat<f32>(at);
@@ -152,10 +154,10 @@ export function multiplyTransposed(
         const a3 = v128.load_splat<f32>(at, 12);
         c30 = f32x4.add(c30, f32x4.mul(a3, b0));
         c31 = f32x4.add(c31, f32x4.mul(a3, b1));
-        at += 32;
+        at += 16;
         by += 32;
-      }
-      const to = target + ((<usize>i) << 5);
+      } while (at < bottom);
+      const to = c + <usize>p * ((<usize>outRows) << 5) + ((<usize>i) << 5);
       v128.store(to, c00);
       v128.store(to, c01, 16);
       v128.store(to, c10, 32);
@@ -166,6 +168,11 @@ export function multiplyTransposed(
       v128.store(to, c31, 112);
     }
   }
+}
+
+/** Puts four columns of A together, row by row. */
+function packColumns(from: usize, count: i32, tile: usize): void {
+  for (let k: usize = 0; k < <usize>count; k++) v128.store(tile + (k << 4), v128.load(from + (k << 5)));
 }
 
 /** Sums of the columns of a panel-wise matrix over its first `count` rows: the gradient of biases. */
