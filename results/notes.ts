@@ -19,7 +19,7 @@ export interface Note {
 export interface Notes {
   /** For each task, and for all together, the verdicts against the reference. */
   readonly verdicts: readonly Note[];
-  /** On each task the method that believed most above the truth, where that did not pay. */
+  /** On each task the method, other than the reference, that believed most above the truth, where that did not pay. */
   readonly fooled: readonly Note[];
   /** Methods with failed cells, and the reasons. */
   readonly failed: readonly Note[];
@@ -102,11 +102,12 @@ function describe(
   return `${format(value, decimals)} [${format(interval.low, decimals)}, ${format(interval.high, decimals)}]`;
 }
 
-function noteFooled({ task, curtain, methods }: Section, place: string): Note[] {
+function noteFooled({ task, curtain, methods, reference }: Section, place: string): Note[] {
   const winner = methods[0]!;
   const [fooled] = methods
     .filter(
-      ({ optimism, lift, best }) =>
+      ({ method, optimism, lift, best }) =>
+        method !== reference?.method &&
         optimism !== null &&
         optimism.value >= margin &&
         optimism.interval !== null &&

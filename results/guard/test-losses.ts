@@ -67,7 +67,8 @@ export interface LossTest {
  * whose scores changed in any pair: which these are doesn't depend on the signs, so that choosing them costs nothing.
  *
  * A regression needs a loss that is shown, and one of the margin that is not ruled out: a loss of the margin is so found
- * with the power of the first test, and one that is shown to be smaller never stops anybody.
+ * with the power of the first test, less the 5 % at most in which it is taken for a smaller one; and one that is shown to
+ * be smaller never stops anybody.
  *
  * @param methods at least one, with the same sections.
  * @param options.margin largest loss without practical meaning, above 0.

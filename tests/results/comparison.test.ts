@@ -195,6 +195,10 @@ describe('compareRows(rows, options): notes', () => {
     ]);
   });
 
+  it('does not name the reference as fooled, which only stands for what was measured', () => {
+    expect(compareRows([...careful, ...naive], { version, against: 'naive' }).notes.fooled).toEqual([]);
+  });
+
   it('names nobody as fooled where the optimism could be 0, or its method found the best designs', () => {
     const unsure = naive.map((row, i) => ({ ...row, optimism: i % 2 === 0 ? 2 : -1 }));
     expect(compareRows([...careful, ...unsure], { version }).notes.fooled).toEqual([]);
