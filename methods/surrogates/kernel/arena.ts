@@ -22,6 +22,16 @@ export class Arena {
     this.#next = this.#first;
   }
 
+  /** How far memory is handed out, for `rewind`. */
+  get mark(): number {
+    return this.#next;
+  }
+
+  /** Takes back what was handed out since the mark. */
+  rewind(mark: number): void {
+    this.#next = mark;
+  }
+
   /**
    * The address of `bytes` free bytes, holding anything.
    *

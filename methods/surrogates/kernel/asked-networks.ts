@@ -1,7 +1,7 @@
 import type { Matrix } from '../../../harness/designs.js';
 import type { Encoding } from '../../../harness/encoding.js';
 import type { OutputScaling } from '../network/trained-network.js';
-import { type Kernel, takeKernel } from './kernel.js';
+import { heldKernel, holdKernel, type Kernel, takeKernel } from './kernel.js';
 import type { KernelParameters } from './kernel-parameters.js';
 import { placeShape, useEncoding, useNetworks } from './network-shape.js';
 
@@ -10,6 +10,8 @@ export class AskedNetworks {
   readonly #encoding: Encoding;
   readonly #networks: readonly KernelParameters[];
   readonly #scaling: OutputScaling;
+  #mark = 0;
+  #transposed = false;
 
   constructor(encoding: Encoding, networks: readonly KernelParameters[], scaling: OutputScaling) {
     this.#encoding = encoding;
@@ -28,7 +30,8 @@ export class AskedNetworks {
   /** The same, and the gradient of mean − spreadWeight · spread by the encoded rows, in score units. */
   gradient(x: Matrix, spreadWeight: number): { scores: Float64Array[]; gradient: Matrix } {
     const { call, arena } = this.#prepare();
-    call.transposeMembers(1);
+    if (!this.#transposed) call.transposeMembers(1);
+    this.#transposed = true;
     const outputs = arena.reserve(4 * this.#networks.length * x.rows);
     const gradient = arena.reserve(8 * x.values.length);
     const { deviation } = this.#scaling;
@@ -39,25 +42,38 @@ export class AskedNetworks {
     };
   }
 
+  /** The kernel with these networks in it, put there anew only where others have used it meanwhile. */
   #prepare(): Kernel {
+    const held = heldKernel(this);
+    if (held !== undefined) {
+      held.arena.rewind(this.#mark);
+      return held;
+    }
     const kernel = takeKernel();
-    const { arena } = kernel;
+    this.#place(kernel);
+    this.#mark = kernel.arena.mark;
+    this.#transposed = false;
+    holdKernel(this);
+    return kernel;
+  }
+
+  #place(kernel: Kernel): void {
     useEncoding(kernel, this.#encoding);
     const { shape: widths, panels } = this.#networks[0]!;
     const shape = placeShape(kernel, widths);
-    const bytes = panels.byteLength;
-    const parameters = arena.reserve(bytes * this.#networks.length);
+    const parameters = kernel.arena.reserve(panels.byteLength * this.#networks.length);
     this.#networks.forEach((network, m) => {
-      arena.write(parameters + m * bytes, network.panels);
+      kernel.arena.write(parameters + m * panels.byteLength, network.panels);
     });
     useNetworks(kernel, shape, parameters, { members: this.#networks.length });
-    return kernel;
   }
 
   #scoresAt(outputs: Float32Array, rows: number): Float64Array[] {
     const { mean, deviation } = this.#scaling;
-    return this.#networks.map((_, m) =>
-      Float64Array.from(outputs.subarray(m * rows, (m + 1) * rows), (output) => mean + deviation * output),
-    );
+    return this.#networks.map((_, m) => {
+      const scores = new Float64Array(rows);
+      for (let i = 0; i < rows; i++) scores[i] = mean + deviation * outputs[m * rows + i]!;
+      return scores;
+    });
   }
 }

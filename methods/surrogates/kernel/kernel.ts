@@ -9,6 +9,7 @@ export interface Kernel {
 }
 
 let loaded: Kernel | undefined;
+let holder: object | undefined;
 
 /**
  * The thread's one kernel, with all of its memory free: whoever takes it puts in what it needs, calls, copies results
@@ -19,7 +20,18 @@ let loaded: Kernel | undefined;
 export function takeKernel(): Kernel {
   loaded ??= load();
   loaded.arena.reset();
+  holder = undefined;
   return loaded;
+}
+
+/** Notes that what the kernel holds now is the owner's, for `heldKernel`; until somebody else takes the kernel. */
+export function holdKernel(owner: object): void {
+  holder = owner;
+}
+
+/** The kernel, if it still holds what the owner put there; otherwise the owner takes it and starts over. */
+export function heldKernel(owner: object): Kernel | undefined {
+  return holder === owner ? loaded : undefined;
 }
 
 function load(): Kernel {

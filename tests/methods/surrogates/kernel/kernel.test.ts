@@ -56,6 +56,23 @@ describe('Arena', () => {
     expect(arena.reserve(8)).toBeGreaterThan(0);
   });
 
+  test('gives trained networks that answer the same in turn as one by one', async () => {
+    const table = makeTable(makeOffer('mixed', { rows: 30 }));
+    const settings = networkSettings.parse({ width: 8, steps: 5 });
+    const networks = await Promise.all([1, 2].map((seed) => trainNetwork(table, settings, rootStream(seed))));
+    const oneByOne = networks.map((network) => [
+      network.predict(table.x),
+      network.predictWithGradient(table.x),
+      network.predictWithGradient(table.x),
+    ]);
+    const inTurn = [0, 1, 2].map((question) =>
+      networks.map((network) =>
+        question === 0 ? network.predict(table.x) : network.predictWithGradient(table.x),
+      ),
+    );
+    expect(inTurn[0]!.map((_, m) => inTurn.map((answers) => answers[m]))).toEqual(oneByOne);
+  });
+
   test('is told true sizes of networks beyond all memory', () => {
     const { call, arena } = takeKernel();
     const shape = placeShape(takeKernel(), { inputs: 100, hidden: new Array<number>(8).fill(4096) });
