@@ -1,6 +1,5 @@
 import { parameterBytes as bytesOfParameters } from './shape';
 
-export { adamStep, beginAdam } from './adam';
 export { ascend } from './ascent';
 export { useConservatism } from './conservatism';
 export { gradients } from './input-gradient';

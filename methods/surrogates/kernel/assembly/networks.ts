@@ -39,8 +39,11 @@ export let firstBiases: usize = 0;
 /** Gradients by inputs of all members, panel-wise f32. */
 export let memberGradients: usize = 0;
 
-/** Half of all addresses: beyond it, sizes are only estimated, and the caller gives up. */
-const addressable: f64 = 2147483648;
+/** Near the end of all addresses, where sums of sizes could run over it. */
+const addressable: f64 = 3.8e9;
+
+/** More bytes than there are addresses. */
+const tooMuch: f64 = 4.3e9;
 
 let parameters: usize = 0;
 let transposed: usize = 0;
@@ -53,7 +56,7 @@ export function scratchBytes(shapeAt: usize, count: i32, rows: i32): f64 {
   for (let l = 1; l <= hiddenLayers(shapeAt); l++) units += <f64>widthOf(shapeAt, l);
   const ofMember = <f64>transposedOffset(shapeAt, hiddenLayers(shapeAt) + 1) + 4 * inputs * <f64>rows;
   const rough = members * ofMember + 8 * (units + inputs) * <f64>rows;
-  return rough < addressable ? <f64>layOut(shapeAt, count, fours(rows), 0) : rough;
+  return rough < addressable ? <f64>layOut(shapeAt, count, fours(rows), 0) : max(rough, tooMuch);
 }
 
 /** Says which networks all further calls are about. */
