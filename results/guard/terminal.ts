@@ -48,7 +48,8 @@ export function conclude({ tests, margin, strict, passed }: GuardReport): string
   return `${passed ? 'Passed' : 'Failed'}: ${found} at a margin of ${margin} in ${countOf(tests.length, 'test')}${unseen}.`;
 }
 
-function tableOf(tests: readonly LossTest[]): string[] {
+function tableOf(all: readonly LossTest[]): string[] {
+  const tests = foldUnchanged(all);
   const name = (text: string) => truncateText(oneLine(text), nameWidth);
   const columns: TextColumn[] = [
     wordColumn(
@@ -57,7 +58,7 @@ function tableOf(tests: readonly LossTest[]): string[] {
     ),
     wordColumn(
       'task',
-      tests.map(({ place }) => name(place?.task ?? 'all tasks')),
+      tests.map(({ place, everywhere }) => (everywhere ? 'everywhere' : name(place?.task ?? 'all tasks'))),
     ),
     numberColumn(
       'difference',
@@ -88,13 +89,38 @@ function tableOf(tests: readonly LossTest[]): string[] {
   ];
 }
 
+/** A line of the table: a test, or all of a method's tests where none of its scores changed. */
+interface TableLine extends LossTest {
+  readonly everywhere: boolean;
+}
+
+function foldUnchanged(tests: readonly LossTest[]): TableLine[] {
+  const moved = new Set(tests.flatMap(({ method, outcome }) => (outcome === 'unchanged' ? [] : [method])));
+  return tests.flatMap((test) => {
+    const everywhere = test.place === null && !moved.has(test.method);
+    const folded = test.place !== null && !moved.has(test.method) && tests.some(isWhole(test.method));
+    return folded ? [] : [{ ...test, everywhere }];
+  });
+}
+
+function isWhole(label: string): (test: LossTest) => boolean {
+  return ({ method, place }) => place === null && method === label;
+}
+
+/** Pairs of a task, as in "12 pairs a task" or "8 to 12 pairs a task". */
+function pairsATask(tests: readonly LossTest[]): string {
+  const pairs = tests.flatMap((test) => (test.place === null ? [] : [test.pairs]));
+  const [least, most] = [Math.min(...pairs), Math.max(...pairs)];
+  return `${least === most ? countOf(most, 'pair') : `${least} to ${most} pairs`} a task`;
+}
+
 function intervalOf({ interval }: LossTest): string {
   return interval === null ? '' : `[${formatDifference(interval.low)}, ${formatDifference(interval.high)}]`;
 }
 
 function explain({ tests, margin }: GuardReport): string {
   const all = tests.some(({ place }) => place === null) ? ', each task and all tasks together' : ' and tasks';
-  return `difference: candidate minus baseline, paired by task, curtain and seed, with its ${Math.round(100 * guardLevel)} % interval. regression: a loss is shown (p loss ≤ ${guardAlpha}: one-sided sign flips, Fisher 1935) and one of ${margin} is not ruled out (one-sided t test of non-inferiority, Schuirmann 1987), Holm-corrected over all methods${all} (Holm 1979): a change without effect fails at most ${100 * guardAlpha} % of guards. power: the chance that these pairs would have shown a true loss of ${margin}; needs: seeds a task that would show it with 80 % power.`;
+  return `difference: candidate minus baseline, paired by task, curtain and seed, ${pairsATask(tests)}, with its ${Math.round(100 * guardLevel)} % interval. regression: a loss is shown (p loss ≤ ${guardAlpha}: one-sided sign flips, Fisher 1935) and one of ${margin} is not ruled out (one-sided t test of non-inferiority, Schuirmann 1987), Holm-corrected over all methods${all} (Holm 1979): a change without effect fails at most ${100 * guardAlpha} % of guards. power: the chance that these pairs would have shown a true loss of ${margin}; needs: seeds a task that would show it with 80 % power.`;
 }
 
 function wrap(text: string): string[] {

@@ -22,11 +22,20 @@ describe('renderGuard(report)', () => {
   const text = renderGuard(guardLedgers(before, after, options));
 
   test('has a line for each method on each task, and tells regressions in sentences with size and interval', () => {
-    expect(text).toMatch(/^steady +hill +0\.000 .*unchanged$/m);
+    expect(text).toMatch(/^a-method-with-a-lab\S* +dale +-0\.055 .*regression/m);
     expect(text.replace(/\s+/g, ' ')).toContain(
       '✗ a-method-with-a-label-of-forty-letters-x on hill (open) lost 0.055, 90 % interval [0.053, 0.057]',
     );
     expect(text).toContain('Failed: 3 regressions found at a margin of 0.02 in 6 tests.');
+  });
+
+  test('tells a method whose scores are all the same in one line', () => {
+    expect(text.match(/^steady .*$/gm)).toHaveLength(1);
+    expect(text).toMatch(/^steady +everywhere +0\.000 .*unchanged$/m);
+  });
+
+  test('states the pairs of a task in its foot', () => {
+    expect(text.replace(/\s+/g, ' ')).toContain('task, curtain and seed, 16 pairs a task,');
   });
 
   test('keeps to 100 columns', () => {
