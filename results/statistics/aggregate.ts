@@ -12,7 +12,7 @@ import type { TaskRuns } from './task-runs.js';
 export type Aggregate = 'mean-of-task-means' | 'interquartile-mean';
 
 /** An aggregate of runs that each count as often as `counts` (total) says. */
-export type CountedAggregate = (counts: ArrayLike<number>) => number;
+export type CountedAggregate = (counts: Uint32Array) => number;
 
 /** Prepares an aggregate of the runs, so that it can be taken of many resamples at a cost linear in their number. */
 export function countedAggregate(runs: TaskRuns, aggregate: Aggregate): CountedAggregate {
@@ -34,9 +34,5 @@ function meanOfTaskMeans({ values, starts, tasks }: TaskRuns): CountedAggregate 
 function pooledInterquartileMean({ values }: TaskRuns): CountedAggregate {
   const order = Uint32Array.from(orderByDescending(values)).reverse();
   const sorted = Float64Array.from(order, (i) => values[i]!);
-  const sortedCounts = new Uint32Array(values.length);
-  return (counts) => {
-    for (let rank = 0; rank < order.length; rank++) sortedCounts[rank] = counts[order[rank]!]!;
-    return interquartileMeanSorted(sorted, sortedCounts, values.length);
-  };
+  return (counts) => interquartileMeanSorted(sorted, order, counts, values.length);
 }

@@ -11,30 +11,34 @@ import { checkValues } from './check-values.js';
 export function interquartileMean(values: ArrayLike<number>): number {
   checkValues(values);
   const sorted = Float64Array.from(values).sort();
-  return interquartileMeanSorted(sorted, new Uint32Array(sorted.length).fill(1), sorted.length);
+  const places = Uint32Array.from(sorted, (_, i) => i);
+  return interquartileMeanSorted(sorted, places, new Uint32Array(sorted.length).fill(1), sorted.length);
 }
 
 /**
  * Interquartile mean of a sample written as distinct places and how often each is taken.
  *
  * @param sorted (m), ascending, which is not checked.
- * @param counts (m), how often each of them is taken.
+ * @param places (m), where in `counts` each of them stands.
+ * @param counts (m), how often it is taken.
  * @param total the sum of the counts, above 0.
  */
 export function interquartileMeanSorted(
   sorted: Float64Array,
-  counts: ArrayLike<number>,
+  places: Uint32Array,
+  counts: Uint32Array,
   total: number,
 ): number {
   const from = total / 4;
   const to = total - from;
   let seen = 0;
+  let i = 0;
+  for (; seen + counts[places[i]!]! <= from; i++) seen += counts[places[i]!]!;
   let sum = 0;
-  for (let i = 0; i < sorted.length && seen < to; i++) {
+  for (; seen < to; i++) {
     const before = seen;
-    seen += counts[i]!;
-    const kept = Math.min(seen, to) - Math.max(before, from);
-    if (kept > 0) sum += kept * sorted[i]!;
+    seen += counts[places[i]!]!;
+    sum += (Math.min(seen, to) - Math.max(before, from)) * sorted[i]!;
   }
   return sum / (to - from);
 }

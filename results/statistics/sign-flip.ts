@@ -99,17 +99,18 @@ function allSums(values: Float64Array): Float64Array {
 /** The sum under each drawn sign pattern, eight signs at a time: a table holds the sums of all patterns of eight. */
 function drawnSums(values: Float64Array, patterns: SignPatterns): Float64Array {
   const groups = Math.ceil(values.length / 8);
-  const tables = new Float64Array(groups * 256);
-  for (let g = 0; g < groups; g++) tables.set(sumsOfEight(values.subarray(8 * g, 8 * g + 8)), 256 * g);
+  const tables = Array.from({ length: groups }, (_, g) => sumsOfEight(values.subarray(8 * g, 8 * g + 8)));
   const sums = new Float64Array(patterns.flips);
-  const bytes = patterns.bytesFor(values.length);
-  for (let flip = 0; flip < patterns.flips; flip++) {
-    const { from, signs } = bytes(flip);
-    let sum = 0;
-    for (let g = 0; g < groups; g++) sum += tables[256 * g + signs[from + g]!]!;
-    sums[flip] = sum;
+  for (const { from, size, signs } of patterns.blocks(values.length)) {
+    const part = sums.subarray(from, from + size);
+    for (let g = 0; g < groups; g++) addEntries(part, tables[g]!, signs, g * size);
   }
   return sums;
+}
+
+/** Adds to each sum the entry of the table that its sign byte, from `start` on, stands for. */
+function addEntries(sums: Float64Array, table: Float64Array, signs: Uint8Array, start: number): void {
+  for (let i = 0; i < sums.length; i++) sums[i]! += table[signs[start + i]!]!;
 }
 
 /** Sums of up to eight values under all 256 patterns; bit k set keeps the sign of value k. */
@@ -127,7 +128,7 @@ function sumsOfEight(values: Float64Array): Float64Array {
 export class SignPatterns {
   readonly flips: number;
   readonly #stream: Stream;
-  readonly #kept = new Map<number, Uint8Array>();
+  readonly #kept = new Map<number, readonly SignBlock[]>();
 
   /** @param flips patterns; 20,000 unless given. */
   constructor(stream: Stream, flips = defaultFlips) {
@@ -136,36 +137,50 @@ export class SignPatterns {
     this.#stream = stream;
   }
 
-  /** A reader of the patterns for n pairs, to be called with 0, 1, …: the signs of a flip, eight a byte, from `from`. */
-  bytesFor(n: number): (flip: number) => { readonly from: number; readonly signs: Uint8Array } {
+  /** The patterns for n pairs, a block after another; the next call may write over a block. */
+  *blocks(n: number): Generator<SignBlock> {
     const words = Math.ceil(n / 32);
-    const width = 4 * words;
+    const known = this.#kept.get(words);
+    if (known !== undefined) {
+      yield* known;
+      return;
+    }
     const stream = this.#stream.split('signs');
-    if (width * this.flips > mostKept) {
-      const signs = new Uint8Array(width);
-      return () => {
-        drawBytes(signs, 0, words, stream);
-        return { from: 0, signs };
-      };
+    const keep = 4 * words * this.flips <= mostKept;
+    const blocks: SignBlock[] = [];
+    const reused = new Uint8Array(keep ? 0 : 4 * words * blockSize);
+    for (let from = 0; from < this.flips; from += blockSize) {
+      const size = Math.min(blockSize, this.flips - from);
+      const block = { from, size, signs: keep ? new Uint8Array(4 * words * size) : reused };
+      drawBlock(block, words, stream);
+      blocks.push(block);
+      yield block;
     }
-    const kept = this.#kept.get(width) ?? new Uint8Array(width * this.flips);
-    if (!this.#kept.has(width)) {
-      for (let flip = 0; flip < this.flips; flip++) drawBytes(kept, flip * width, words, stream);
-      this.#kept.set(width, kept);
-    }
-    return (flip) => ({ from: flip * width, signs: kept });
+    if (keep) this.#kept.set(words, blocks);
   }
 }
 
+/** Patterns of a block: few enough that their sums stay near the processor. */
+const blockSize = 2048;
+
+/** Sign patterns `from` … `from + size − 1`: eight signs a byte, those of pairs 8g … 8g + 7 of flip f at `g * size + f`. */
+interface SignBlock {
+  readonly from: number;
+  readonly size: number;
+  readonly signs: Uint8Array;
+}
+
 /** Each uniform number gives 32 signs. */
-function drawBytes(signs: Uint8Array, from: number, words: number, stream: Stream): void {
-  for (let word = 0; word < words; word++) {
-    const bits = Math.floor(stream.uniform() * 2 ** 32);
-    const at = from + 4 * word;
-    signs[at] = bits;
-    signs[at + 1] = bits >>> 8;
-    signs[at + 2] = bits >>> 16;
-    signs[at + 3] = bits >>> 24;
+function drawBlock({ size, signs }: SignBlock, words: number, stream: Stream): void {
+  for (let flip = 0; flip < size; flip++) {
+    for (let word = 0; word < words; word++) {
+      const bits = Math.floor(stream.uniform() * 2 ** 32);
+      const at = 4 * word * size + flip;
+      signs[at] = bits;
+      signs[at + size] = bits >>> 8;
+      signs[at + 2 * size] = bits >>> 16;
+      signs[at + 3 * size] = bits >>> 24;
+    }
   }
 }
 

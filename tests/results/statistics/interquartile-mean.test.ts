@@ -43,7 +43,7 @@ describe('interquartileMean', () => {
     );
   });
 
-  it('interquartileMeanSorted(sorted, counts) is interquartileMean of the values written out', () => {
+  it('interquartileMeanSorted(sorted, places, counts, total) is interquartileMean of the values written out', () => {
     fc.assert(
       fc.property(
         fc.array(fc.tuple(fc.integer({ min: -50, max: 50 }), fc.nat(3)), { minLength: 1 }),
@@ -53,7 +53,8 @@ describe('interquartileMean', () => {
           fc.pre(written.length > 0);
           const counted = interquartileMeanSorted(
             Float64Array.from(pairs, ([value]) => value),
-            pairs.map(([, count]) => count),
+            Uint32Array.from(pairs, (_, i) => pairs.length - 1 - i),
+            Uint32Array.from(pairs, ([, count]) => count).reverse(),
             written.length,
           );
           expect(counted).toBeCloseTo(interquartileMean(written), 10);
