@@ -13,10 +13,16 @@ export function inStyle(): boolean {
   return process.stdout.isTTY === true && !process.env['NO_COLOR'];
 }
 
-/** Ends the program without a word when who reads its standard output has gone, as `onebatch list | head` does. */
+/**
+ * Ends the program without a word when who reads its standard output has gone, as `onebatch list | head` does. Nobody
+ * reading its remarks is no reason to end: a rehearsal goes on.
+ */
 export function endQuietlyWithoutReader(): void {
   process.stdout.on('error', (error: NodeJS.ErrnoException) => {
     if (error.code !== 'EPIPE') throw error;
     process.exit();
+  });
+  process.stderr.on('error', (error: NodeJS.ErrnoException) => {
+    if (error.code !== 'EPIPE') throw error;
   });
 }
